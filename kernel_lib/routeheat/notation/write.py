@@ -1,0 +1,102 @@
+"""From a sheet to its canonical text; reading that text gives equal objects. Comments are not part of a sheet."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from routeheat.chem.measured import Measured, decimal_text
+from routeheat.chem.route import Declaration, Route, Sheet
+from routeheat.chem.row import Row
+from routeheat.chem.species import Species
+from routeheat.chem.step import Step
+
+
+def write(sheet: Sheet) -> str:
+    """The sheet as typed text: one blank line between sections, one key order, two spaces of indentation."""
+    blocks: list[list[str]] = []
+    if sheet.coverage is not None:
+        blocks.append([f"uncertainty k = {decimal_text(sheet.coverage)}"])
+    if sheet.species:
+        width = max(len(name) for name in sheet.species)
+        blocks.append(["species", *(f"  {_declaration(item, width)}" for item in sheet.species.values())])
+    if sheet.known:
+        blocks.append(["known", *(line for row in sheet.known.values() for line in _row(row, _row_keys(row)))])
+    for target in sheet.targets.values():
+        first, *rest = _row(target, _row_keys(target))
+        blocks.append([f"target {first.strip()}", *rest])
+    blocks.extend(list(_route(route)) for route in sheet.routes.values())
+    return "\n\n".join("\n".join(block) for block in blocks) + "\n"
+
+
+def _declaration(item: Declaration, width: int) -> str:
+    species = item.species
+    formula = "?" if species.formula is None else species.formula.text
+    keys = []
+    if item.title:
+        keys.append(f'name "{item.title}"')
+    if item.cas:
+        keys.append(f"cas {item.cas}")
+    keys.extend(_setting(name, value) for name, value in item.settings)
+    line = f"{species.name:<{width}}  {formula}{species.state}"
+    return f"{line} | {' | '.join(keys)}" if keys else line
+
+
+def _route(route: Route) -> Iterator[str]:
+    title = f' "{route.title}"' if route.title else ""
+    yield f"route {route.name}{title} makes {route.makes.text}"
+    for step in route.steps:
+        if step.label in route.used:
+            yield f"  use {step.label}"
+        else:
+            yield from _row(step.row, [*_row_keys(step.row), *_step_keys(step)])
+
+
+def _row(row: Row, keys: list[str]) -> Iterator[str]:
+    yield f"  [{row.label}] {_equation(row)}"
+    if keys:
+        yield f"       {' | '.join(keys)}"
+
+
+def _equation(row: Row) -> str:
+    if row.subject is None:
+        return row.reaction.text
+    text = f"{row.kind} of {row.subject.text}"
+    if row.kind == "combustion":
+        text += f" to {', '.join(species.text for _, species in row.reaction.products)}"
+    return text
+
+
+def _row_keys(row: Row) -> list[str]:
+    keys = [] if row.heat is None else [f"dH {row.heat.text}"]
+    if row.source:
+        keys.append(f'source "{row.source}"')
+    keys.extend(_setting(name, value) for name, value in row.settings)
+    return keys
+
+
+def _step_keys(step: Step) -> Iterator[str]:
+    named: tuple[tuple[str, Measured | Species | None], ...] = (
+        ("yield", step.yield_), ("T", step.temperature), ("conc", step.concentration), ("cp", step.heat_capacity),
+        ("product", step.product), ("limiting", step.limiting), ("amount", step.amount),
+    )  # fmt: skip
+    if step.side_of:
+        yield f"side of {step.side_of}"
+    for name, value in named:
+        if value is not None:
+            yield f"{name} {value.text}"
+    for species, equivalents in step.equivalents:
+        yield f"equiv {decimal_text(equivalents)} of {species.text}"
+    for recycle in step.recycles:
+        yield f"recycle {recycle.species.text} from {recycle.source} {recycle.part.text}"
+    if step.operation:
+        yield step.operation
+    if step.loss:
+        yield f"loss {step.loss}"
+
+
+def _setting(name: str, value: object) -> str:
+    if value is True:
+        return name
+    if isinstance(value, Measured):
+        return f"{name} {value.text}"
+    return f"{name} {value}" if name in ("shared",) else f'{name} "{value}"'

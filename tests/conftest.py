@@ -1,0 +1,31 @@
+"""Options of the whole test suite."""
+
+from __future__ import annotations
+
+import os
+
+import pytest
+
+os.environ.setdefault("PYTHONHASHSEED", "0")
+
+
+def pytest_addoption(parser: pytest.Parser) -> None:
+    parser.addoption("--no-skips", action="store_true", help="a skipped test fails the run (used in CI)")
+
+
+def pytest_collection_modifyitems(config: pytest.Config, items: list[pytest.Item]) -> None:
+    """Browser tests run when they are asked for with ``-m browser``."""
+    if "browser" in str(config.getoption("-m")):
+        return
+    kept = [item for item in items if item.get_closest_marker("browser") is None]
+    config.hook.pytest_deselected(items=[item for item in items if item not in kept])
+    items[:] = kept
+
+
+@pytest.hookimpl(hookwrapper=True)
+def pytest_runtest_makereport(item: pytest.Item):  # type: ignore[no-untyped-def]
+    outcome = yield
+    report = outcome.get_result()
+    if report.skipped and item.config.getoption("--no-skips"):
+        report.outcome = "failed"
+        report.longrepr = f"skipped, but no skip is allowed here: {report.longrepr}"
