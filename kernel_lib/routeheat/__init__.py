@@ -33,6 +33,7 @@ routeheat.errors.OutOfReach: ...
 May import: everything below it; heavy libraries are imported where they are used.
 """
 
+from routeheat.chem.route import Route, Sheet
 from routeheat.draw import draw, svg
 from routeheat.errors import (
     Fault,
@@ -61,8 +62,10 @@ __all__ = [
     "OutOfReach",
     "Profile",
     "Refusal",
+    "Route",
     "RouteError",
     "RouteheatError",
+    "Sheet",
     "SheetFaults",
     "UnitError",
     "UnknownName",

@@ -14,7 +14,7 @@ from dataclasses import dataclass
 from fractions import Fraction
 from typing import Any, Literal
 
-from routeheat.present.numbers import reading
+from routeheat.present.numbers import MINUS, fraction, reading
 from routeheat.present.table import Reading
 
 
@@ -24,9 +24,10 @@ class Datum:
 
     label: str
     """Label of the row it belongs to."""
-    what: Literal["heat", "yield", "recycle"] = "heat"
+    what: Literal["heat", "yield", "recycle", "calibration"] = "heat"
+    """A ``calibration`` is an error that several heats share, in units of its own standard uncertainty."""
     value: Fraction = Fraction(0)
-    """kJ per mole of reaction as written for a heat; a fraction of 1 for a yield or a recycle."""
+    """kJ per mole of reaction as written for a heat; a fraction of 1 for a yield or a recycle; 0 for a calibration."""
     u: Fraction | None = None
     """Standard uncertainty in the same unit; ``None`` when not stated."""
     symbol: str = ""
@@ -176,8 +177,21 @@ class HeatSum:
 
     @property
     def text(self) -> str:
-        """The heat as printed, without its unit: ``−163.2 ± 9.7 (k = 1)``, or the symbolic total."""
-        return str(self.value) if self.unknowns else reading(self.reading)
+        """The heat as printed, without its unit: ``−163.2 ± 9.7 (k = 1)``, or ``x − 134.90 ± 0.64 (k = 2)``."""
+        return self._symbolic_text() if self.unknowns else reading(self.reading)
+
+    def _symbolic_text(self) -> str:
+        written = ""
+        for symbol, c in self.unknowns.items():
+            sign = (" + " if c > 0 else f" {MINUS} ") if written else ("" if c > 0 else MINUS)
+            written += sign + (symbol if abs(c) == 1 else f"{fraction(abs(c))} {symbol}")
+        stated = [datum for datum, _ in self.terms if not datum.symbol]
+        if not stated:
+            return written
+        sign = f" {MINUS} " if self.exact < 0 else " + "
+        u = None if all(datum.u is None for datum in stated) else self.u
+        at_least = any(datum.u is None for datum in stated)
+        return written + sign + reading(Reading(float(abs(self.exact)), u, self.k, at_least))
 
     @property
     def quantity(self) -> Any:

@@ -12,9 +12,9 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Protocol
 
-from routeheat.draw.layout import lay_out
+from routeheat.draw.picture import Picture
 from routeheat.draw.screen import figure
-from routeheat.draw.svg import paint, static_svg
+from routeheat.draw.svg import static_svg
 from routeheat.errors import UnknownName
 from routeheat.present.ladder import Ladder
 
@@ -47,14 +47,14 @@ def as_ladder(result: Ladder | Drawable) -> Ladder:
 
 def svg(
     result: Ladder | Drawable, *, width: float | None = None, height: float | None = None, **unknown: object
-) -> str:
-    """The diagram of ``result`` as an SVG element that follows the theme of the page it stands in.
+) -> Picture:
+    """The diagram of ``result`` as SVG text that follows the theme of the page it stands in; a notebook shows it.
 
     ``width`` and ``height`` in px; either grows when texts would overlap otherwise.
     Raises :class:`~routeheat.errors.UnknownName` for any other keyword.
     """
     _refuse(unknown, ("width", "height"))
-    return paint(lay_out(as_ladder(result), width=width, height=height))
+    return Picture.of(as_ladder(result), width, height)
 
 
 def draw(result: Ladder | Drawable, **unknown: object) -> Figure:

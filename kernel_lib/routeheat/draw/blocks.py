@@ -69,7 +69,10 @@ def paragraph(
     # wrapping may drop only spaces; anything else missing means that something was shortened
     whole = plain(shown)
     full = whole if "".join(map(plain, rows)).replace(" ", "") != whole.replace(" ", "") else ""
-    boxes = [line_box(0, i * size * LINE, row, kind, full=full, bold=bold) for i, row in enumerate(rows)]
+    boxes = [
+        line_box(0, index * size * LINE, row, kind, full="" if index else full, bold=bold)
+        for index, row in enumerate(rows)
+    ]
     w = max((box.w for box in boxes), default=0.0)
     if centred:
         boxes = [replace(box, x=(w - box.w) / 2, anchor="middle") for box in boxes]

@@ -139,12 +139,17 @@ def beside(
     favourite = _spot(x, low, high, Rect(x + 8, middle - height / 2, x + 8 + width, middle + height / 2))
     if space.free(favourite):
         return favourite
+    far = reach + height / 2
+    top_most, low_most = space.bounds.y0 + height / 2, space.bounds.y1 - height / 2
+    centres = tuple(_steps(middle, max(top_most, low - far), min(low_most, high + far)))
     candidates = []
     for shift, home in places:
         toll = home
         if x + shift < within[0] or x + shift + width > within[1]:
             toll += _ABROAD
-        for centre in _steps(middle, space.bounds.y0 + height / 2, space.bounds.y1 - height / 2):
+        if toll > reach or x + shift < space.bounds.x0 or x + shift + width > space.bounds.x1:
+            continue
+        for centre in centres:
             top, bottom = centre - height / 2, centre + height / 2
             off = max(0.0, low - bottom, top - high)
             if shift < 0 < shift + width and top < high + 3 and bottom > low - 3:

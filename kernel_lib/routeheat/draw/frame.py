@@ -150,9 +150,9 @@ def key_sentences(ladder: Ladder) -> tuple[str, ...]:
     entered = [arrow for arrow in arrows if arrow.end is not None]
     said = []
     if any(arrow.spread is not None for arrow in entered):
-        said.append(f"Whisker and ±: expanded uncertainty, {coverage(ladder.k)}.")
+        said.append(f"Whisker: uncertainty of the level reached; ±: of the arrow itself; both {coverage(ladder.k)}.")
     if any(arrow.spread is not None and not arrow.complete for arrow in entered):
-        said.append("Dashed whisker: lower bound, some uncertainty not stated.")
+        said.append("Whisker without caps: lower bound, some uncertainty not stated.")
     if any(arrow.spread is None for arrow in entered):
         said.append("Open head: uncertainty not stated.")
     if len(entered) < len(arrows):

@@ -95,7 +95,19 @@ def carriers(ladder: Ladder, rows: list[Row], scale: Scale, *, overlay: bool) ->
         if column.arrows:
             last = column.arrows[-1]
             add(row.shafts[-1] + (BAR if last.end is None else -BAR), row.ends[-1] - 6, level_after(last))
-    return tuple(lines) if overlay else (*lines, *_shared_levels(ladder, rows, scale, same))
+    return tuple(lines) if overlay else _joined([*lines, *_shared_levels(ladder, rows, scale, same)])
+
+
+def _joined(lines: list[Line]) -> tuple[Line, ...]:
+    """Lines of one level that touch become one, so that none is drawn twice and looks thicker."""
+    joined: list[Line] = []
+    for line in sorted(lines, key=lambda each: (each.y0, each.x0, each.x1)):
+        last = joined[-1] if joined else None
+        if last and last.y0 == line.y0 and line.x0 <= last.x1:
+            joined[-1] = Line(last.x0, last.y0, max(last.x1, line.x1), last.y1)
+        else:
+            joined.append(line)
+    return tuple(joined)
 
 
 def _shared_levels(ladder: Ladder, rows: list[Row], scale: Scale, same: float) -> list[Line]:
@@ -112,7 +124,7 @@ def _shared_levels(ladder: Ladder, rows: list[Row], scale: Scale, same: float) -
                 continue
             for (first, x_first), (last, x_last) in chains:
                 if abs(first.start - arrow.start) <= same:
-                    lines.append(Line(x_first, scale.y(arrow.start), x, scale.y(arrow.start)))
+                    lines.append(Line(min(x_first, x), scale.y(arrow.start), max(x_first, x), scale.y(arrow.start)))
                 if last.end is not None and abs(last.end - arrow.end) <= same:
-                    lines.append(Line(x_last, scale.y(arrow.end), x, scale.y(arrow.end)))
+                    lines.append(Line(min(x_last, x), scale.y(arrow.end), max(x_last, x), scale.y(arrow.end)))
     return lines

@@ -93,12 +93,15 @@ def shorten(rich: Rich, width: float, size: float, *, bold: bool = False) -> Ric
     """``rich`` itself where it fits in ``width`` px, else with its middle replaced by an ellipsis."""
     if rich_width(rich, size, bold=bold) <= width:
         return rich
-    letters = [Run(character, run.style) for run in rich for character in run.text]
+    # no letter is narrower than an eighth of its size, so more letters than this never fit
+    most = int(8 * width / size) + 1
+    first = _letters(rich, most)
+    last = _letters(tuple(Run(run.text[::-1], run.style) for run in reversed(rich)), most)
     room = width - text_width(ELLIPSIS, size, bold=bold)
-    head = _fitting(letters, room / 2, size, bold)
-    used = rich_width(tuple(letters[:head]), size, bold=bold)
-    tail = min(_fitting(letters[::-1], room - used, size, bold), len(letters) - head)
-    return _merged([*letters[:head], Run(ELLIPSIS), *letters[len(letters) - tail :]])
+    head = _fitting(first, room / 2, size, bold)
+    used = rich_width(tuple(first[:head]), size, bold=bold)
+    tail = _fitting(last, room - used, size, bold)
+    return _merged([*first[:head], Run(ELLIPSIS), *reversed(last[:tail])])
 
 
 def wrap(rich: Rich, width: float, size: float, *, lines: int, bold: bool = False) -> tuple[Rich, ...]:
@@ -142,6 +145,11 @@ def _words(rich: Rich) -> list[Rich]:
     if word:
         words.append(tuple(word))
     return words
+
+
+def _letters(rich: Rich, most: int) -> list[Run]:
+    """The first letters, each a run of its own."""
+    return [Run(letter, run.style) for run in rich for letter in run.text[:most]][:most]
 
 
 def _fitting(letters: list[Run], width: float, size: float, bold: bool) -> int:

@@ -115,10 +115,12 @@ def _arrow(arrow: ArrowMark, geometry: Geometry) -> dict[str, Any]:
             "color": colour,
             "angle": 180 if end < start and symbol != "circle" else 0,
             "line": {"width": 1.2, "color": colour},
-            },
+            "opacity": 1,
+        },
         "hoverinfo": "text",
         "hovertext": "<br>".join(plotly_text(line[:400]) for line in arrow.hover),
     }  # fmt: skip
+
 
 def _whiskers(geometry: Geometry) -> list[dict[str, Any]]:
     """Error bars beside the heads, one trace per column and kind; a lower bound has no caps."""

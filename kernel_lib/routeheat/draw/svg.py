@@ -137,7 +137,7 @@ def _shaft(arrow: ArrowMark, overlay: bool) -> list[str]:
     filled = f" rh-f{cycle(arrow.series)}" if arrow.whisker else ""
     width = _WIDTHS[arrow.role]
     length = abs(arrow.y1 - arrow.y0)
-    if length < 0.01:
+    if arrow.y0 == arrow.y1:
         return [
             f'<circle class="{kind}{filled}" cx="{_n(arrow.x)}" cy="{_n(arrow.y1)}" r="3" stroke="{colour}" '
             f'fill="{fill}" stroke-width="1.2"/>'

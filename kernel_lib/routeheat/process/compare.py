@@ -11,9 +11,9 @@ from routeheat.chem.heat import HeatSum
 from routeheat.chem.route import Route
 from routeheat.errors import RouteError
 from routeheat.present.ladder import Ladder
-from routeheat.present.numbers import number
+from routeheat.present.numbers import reading
 from routeheat.present.show import Shown
-from routeheat.present.table import Table
+from routeheat.present.table import Reading, Table
 from routeheat.process import compare_views
 from routeheat.process.closure import Closure, close, significant
 from routeheat.process.profile import Profile, profile
@@ -137,7 +137,7 @@ def _verdict(first: Profile, second: Profile, heat: HeatSum) -> str:
     if not significant(heat):
         return "not distinguishable"
     lower, upper = (second, first) if heat.exact < 0 else (first, second)
-    size = f"{number(abs(float(heat.exact)))} {first.unit}"
+    size = f"{reading(Reading(abs(float(heat.exact)), heat.u, heat.k))} {first.unit}"
     if any("yield uncertainty" in note for item in (first, second) for note in item.yield_notes):
         size += " (yield uncertainty not included)"
     if lower.total.exact > 0:
