@@ -30,56 +30,12 @@ Traceback (most recent call last):
     ...
 routeheat.errors.OutOfReach: ...
 
-May import: everything below it; heavy libraries are imported where they are used.
+The public names stand in ``__init__.pyi``; each is imported when it is first used (lazy-loader, Scientific Python
+SPEC 1). May import: everything below it.
 """
 
-from routeheat.chem.route import Route, Sheet
-from routeheat.draw import draw, svg
-from routeheat.errors import (
-    Fault,
-    FormulaError,
-    OutOfReach,
-    RouteError,
-    RouteheatError,
-    SheetFaults,
-    UnitError,
-    UnknownName,
-)
-from routeheat.hess.combination import Combination, alternatives, combine
-from routeheat.hess.reach import Refusal
-from routeheat.notation.code import read_reaction, row
-from routeheat.notation.write import write as write_sheet
-from routeheat.process.compare import Comparison, compare_routes
-from routeheat.process.profile import Profile, profile
-from routeheat.process.profile_views import step_ladder
-from routeheat.process.sheet import check_sheet, read_sheet
+import lazy_loader
 
-__all__ = [
-    "Combination",
-    "Comparison",
-    "Fault",
-    "FormulaError",
-    "OutOfReach",
-    "Profile",
-    "Refusal",
-    "Route",
-    "RouteError",
-    "RouteheatError",
-    "Sheet",
-    "SheetFaults",
-    "UnitError",
-    "UnknownName",
-    "alternatives",
-    "check_sheet",
-    "combine",
-    "compare_routes",
-    "draw",
-    "profile",
-    "read_reaction",
-    "read_sheet",
-    "row",
-    "step_ladder",
-    "svg",
-    "write_sheet",
-]
-__version__ = "0.1.0"
+from routeheat._version import __version__ as __version__
+
+__getattr__, __dir__, __all__ = lazy_loader.attach_stub(__name__, __file__)

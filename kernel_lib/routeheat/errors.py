@@ -6,6 +6,7 @@
     ├── UnitError           a quantity has the wrong or an unknown unit; ``.text``, ``.hint``
     ├── OutOfReach          no combination of the known rows gives the target; ``.broken``, ``.missing``
     ├── RouteError          a route cannot be run as typed; ``.route``, ``.step``, ``.hint``
+    ├── ReferenceMoved      a result is not what its kept reference says; ``.name``, ``.tables``
     └── UnknownName         a name or an option that does not exist; ``.name``, ``.choices``
 
 Errors carry their data as fields, print themselves in plain words, and pickle.
@@ -23,6 +24,7 @@ __all__ = [
     "Fault",
     "FormulaError",
     "OutOfReach",
+    "ReferenceMoved",
     "RouteError",
     "RouteheatError",
     "SheetFaults",
@@ -132,6 +134,20 @@ class RouteError(RouteheatError):
         """Label of the step at fault; empty when the route as a whole is."""
         self.hint = hint
         super().__init__(message + (f" ({hint})" if hint else ""))
+
+
+class ReferenceMoved(RouteheatError):
+    """A result is not what its kept reference says, beyond the tolerance.
+
+    ``tables`` say what moved, which typed rows were edited, and what each contributes to the change; they are tables of
+    :mod:`routeheat.present.table`.
+    """
+
+    def __init__(self, message: str, name: str, tables: tuple[object, ...] = ()) -> None:
+        self.name = name
+        """Name of the reference."""
+        self.tables = tables
+        super().__init__(message)
 
 
 class UnknownName(RouteheatError):

@@ -8,6 +8,7 @@ May import: :mod:`routeheat.errors`.
 
 from __future__ import annotations
 
+import math
 import re
 import unicodedata
 from dataclasses import dataclass
@@ -163,6 +164,8 @@ def read_unit(text: str) -> Unit:
             if len(divisors) > 1:
                 raise UnitError("write what stands under the fraction bar in brackets", text, "like kJ/(kg K)")
         factors += [(symbol, -power) for symbol, power in divisors]
+    if len(factors) > 1 and any(symbol == "%" for symbol, _ in factors):
+        raise UnitError("a per cent sign stands alone", text, "write the number without it")
     factor, dimension = Fraction(1), _DIMENSIONLESS
     for symbol, power in factors:
         size, exponents = _SYMBOLS[symbol]
@@ -235,7 +238,7 @@ def to_pint(value: float, unit: str) -> Any:
     """``value`` as a pint quantity of the application registry; ``unit`` is a pint unit string of our own."""
     import pint
 
-    return pint.get_application_registry().Quantity(value, unit)
+    return pint.get_application_registry().Quantity(value, unit)  # type: ignore[no-untyped-call]
 
 
 def from_pint(quantity: Any, unit: Unit, pint_unit: str) -> Fraction:
@@ -251,4 +254,6 @@ def from_pint(quantity: Any, unit: Unit, pint_unit: str) -> Fraction:
         magnitude = quantity.to(pint_unit).magnitude
     except pint.DimensionalityError as problem:
         raise UnitError(f"{quantity.units} cannot be expressed in {unit.text}", str(quantity)[:80]) from problem
+    if not math.isfinite(magnitude):
+        raise UnitError("a finite number is expected", str(quantity)[:80])
     return Fraction(repr(float(magnitude)))

@@ -14,14 +14,11 @@ ROOT = Path(__file__).parents[2]
 SOURCES = sorted([*(ROOT / "kernel_lib").rglob("*.py"), *(ROOT / "widgets").rglob("*.py")])
 
 
-def test_all_is_sorted_and_complete() -> None:
-    public = {
-        name
-        for name, value in vars(rh).items()
-        if not name.startswith("_") and not isinstance(value, type(sys))
-    }
-    assert list(rh.__all__) == sorted(rh.__all__, key=lambda name: (name.lower() == name, name))
-    assert public == set(rh.__all__)
+def test_every_public_name_is_sorted_listed_and_there() -> None:
+    assert list(rh.__all__) == sorted(rh.__all__)
+    assert dir(rh) == list(rh.__all__)
+    for name in rh.__all__:
+        assert not isinstance(getattr(rh, name), type(sys)), f"{name} is a module, not a name"
 
 
 def test_source_roots_are_plain_folders() -> None:

@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 from fractions import Fraction
+from functools import cache
 from itertools import combinations
 
 from routeheat.chem.elements import elements
@@ -41,11 +42,13 @@ def stoichiometry(species: Iterable[Species]) -> dict[Species, Fraction] | None:
     return {item: Fraction(-cycles[0][item], first) for item in listed}
 
 
+@cache
 def _common() -> Sequence[Species]:
     """Small species that are often left out of an equation, in the order in which they are proposed."""
     texts = (
         ("H2O", "l"), ("HCl", "g"), ("H2", "g"), ("O2", "g"), ("CO2", "g"), ("N2", "g"), ("NH3", "g"), ("HBr", "g"),
         ("SO2", "g"), ("NaCl", "s"), ("NaBr", "s"), ("CO", "g"), ("HF", "g"), ("HI", "g"), ("CH4O", "l"),
+        ("H^+", "aq"), ("OH^-", "aq"), ("Na^+", "aq"), ("Cl^-", "aq"),
     )  # fmt: skip
     return [Species(text, phase, "", read_formula(text)) for text, phase in texts]
 
@@ -68,7 +71,7 @@ def completion(reaction: Reaction) -> str:
     rebalanced = _other_coefficients(reaction)
     if rebalanced is not None:
         return f"balanced: {rebalanced.text}"
-    excess = dict(reaction.imbalance)
+    excess = reaction.imbalance
     present = {item.formula.text: item for item in reaction.species if item.formula is not None}
     candidates = [present.get(item.name, item) for item in _common()]
     for count in (1, 2):
@@ -77,7 +80,8 @@ def completion(reaction: Reaction) -> str:
             residual, numbers = span.reduce(excess)
             if not residual and len(numbers) == count:
                 return "add " + " and ".join(
-                    f"+ {_times(abs(n))}{item.text} on the {'left' if n > 0 else 'right'}" for item, n in numbers.items()
+                    f"+ {_times(abs(n))}{item.text} on the {'left' if n > 0 else 'right'}"
+                    for item, n in numbers.items()
                 )
     return ""
 
@@ -105,7 +109,7 @@ def reference_species(symbol: str) -> Species | None:
         return None
     name, _, state = element.reference_state.partition("(")
     phase, _, form = state.rstrip(")").partition(", ")
-    return Species(name, phase, form, read_formula(name))
+    return Species(name, phase, form, read_formula(name, declared=True))
 
 
 def formation(species: Species) -> Reaction:
@@ -125,7 +129,7 @@ def formation(species: Species) -> Reaction:
             raise ValueError(f"{symbol} has no reference state here: type the formation as an equation")
         needed[reference] = count / dict(reference.formula.counts)[symbol]
     if species in needed:
-        raise ValueError(f"{species} is the reference state of its element: its formation is zero by definition")
+        raise ValueError(f"{species} is the reference state of its element: its formation is zero, and needs no row")
     return Reaction(tuple((n, item) for item, n in needed.items()), ((Fraction(1), species),))
 
 
@@ -137,9 +141,16 @@ def combustion(species: Species, products: Sequence[Species]) -> Reaction:
     oxygen = Species("O2", "g", "", read_formula("O2"))
     if species.formula is None:
         raise ValueError(f"the formula of {species} is not known")
+    unknown = [item for item in products if item.formula is None]
+    if unknown:
+        raise ValueError(f"the formula of {unknown[0]} is not known")
     numbers = stoichiometry([species, oxygen, *products])
     if numbers is None:
+        made = {element for item in products for element in composition(item)}
+        lost = [element for element in composition(species) if element not in made and element != "O"]
         listed = ", ".join(item.text for item in products)
+        if lost:
+            raise ValueError(f"no product of this combustion holds {', '.join(lost)}")
         raise ValueError(f"{species} with O2(g) does not burn to {listed} in exactly one way")
     wrong = [item for item in products if numbers[item] <= 0]
     if wrong or numbers[oxygen] >= 0:

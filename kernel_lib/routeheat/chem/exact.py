@@ -25,7 +25,7 @@ Vector = Mapping[K, Fraction | int]
 
 def primitive(vector: Vector[K]) -> tuple[dict[K, int], Fraction]:
     """The vector as integers without a common divisor, and the positive factor it was multiplied by (1 for zero)."""
-    scale = math.lcm(*(value.denominator for value in vector.values()))
+    scale = math.lcm(*[value.denominator for value in vector.values()])
     whole = {key: value.numerator * (scale // value.denominator) for key, value in vector.items() if value}
     divisor = math.gcd(*whole.values()) or 1
     return {key: value // divisor for key, value in whole.items()}, Fraction(scale, divisor)
@@ -93,8 +93,8 @@ class _Line(Generic[K, L]):
         factor, times = other // divisor, own // divisor
         subtract(self.vector, factor, pivot.vector, times)
         subtract(self.made, factor, pivot.made, times)
-        common = math.gcd(*self.vector.values(), *self.made.values())
-        if common > 1:
+        # without a factor the entries hardly grow, and looking for a divisor costs more than it saves
+        if abs(factor) != 1 and (common := math.gcd(*self.vector.values(), *self.made.values())) > 1:
             self.vector = {key: value // common for key, value in self.vector.items()}
             self.made = {label: value // common for label, value in self.made.items()}
 
@@ -134,8 +134,8 @@ class Span(Generic[K, L]):
         line = _line(label, vector)
         self._reduce(line)
         if not line.vector:
-            self._cycles.append(line.made)
-            return dict(line.made)
+            self._cycles.append(primitive(line.made)[0])
+            return dict(self._cycles[-1])
         self._settle(next(iter(line.vector)), line)
         return None
 
@@ -194,7 +194,7 @@ class Span(Generic[K, L]):
                     continue
                 if not length:
                     active.discard(index)
-                    self._cycles.append(lines[index].made)
+                    self._cycles.append(primitive(lines[index].made)[0])
                     continue
                 key = min(lines[index].vector, key=lambda key: len(holders[key]))
             pivot = lines[index]
@@ -228,25 +228,25 @@ class Solution(Generic[L]):
 
 
 def solve(rows: Mapping[L, Vector[K]], target: Vector[K]) -> Solution[L] | None:
-    """A combination of ``rows`` that gives ``target``, or ``None`` when there is none.
+    """A combination of ``rows`` that gives ``target``, or ``None`` when there is none; quick after :func:`presolve`.
 
     The rows that the fundamental cycles link to the combination, directly or through one another, are exactly those
     that some combination of independent rows uses (connected components of a linear matroid; J. Oxley, Matroid Theory,
     2nd ed. 2011, sec. 4.1 and 4.3, from memory). A cycle among other rows can be added as a whole to any combination,
     but no row of it can replace one that the target needs: such cycles are left out.
     """
-    possible = {label: rows[label] for label in presolve(rows, target)}
-    span = Span(possible)
+    span = Span(rows)
     residual, coefficients = span.reduce(target)
     if residual:
         return None
+    cycles = span.cycles
     linked = set(coefficients)
-    apart = span.cycles
+    apart = cycles
     touching = [cycle for cycle in apart if not linked.isdisjoint(cycle)]
     while touching:
         linked.update(*touching)
         apart = [cycle for cycle in apart if not linked.issuperset(cycle)]
         touching = [cycle for cycle in apart if not linked.isdisjoint(cycle)]
-    cycles = tuple(cycle for cycle in span.cycles if not linked.isdisjoint(cycle))
-    return Solution(coefficients, tuple(label for label in rows if label in linked), cycles)
+    kept = tuple(cycle for cycle in cycles if not linked.isdisjoint(cycle))
+    return Solution(coefficients, tuple(label for label in rows if label in linked), kept)
 

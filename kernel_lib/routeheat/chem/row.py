@@ -10,7 +10,7 @@ from routeheat.chem.heat import Datum, HeatSum
 from routeheat.chem.measured import Measured
 from routeheat.chem.reaction import Reaction
 from routeheat.chem.species import Species
-from routeheat.units import KJ, KJ_PER_KG, KJ_PER_MOL, KELVIN, ZERO_CELSIUS
+from routeheat.units import KELVIN, KJ, KJ_PER_KG, KJ_PER_MOL, ZERO_CELSIUS
 
 REFERENCE_TEMPERATURE = Fraction(25) + ZERO_CELSIUS
 """25 °C in kelvin: the temperature of a known row's heat that does not say its own."""

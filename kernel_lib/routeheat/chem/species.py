@@ -67,3 +67,7 @@ class Species:
 
     def __str__(self) -> str:
         return self.text
+
+    def __hash__(self) -> int:
+        # names and states tell nearly all species apart; hashing the fractions of a formula costs ten times as much
+        return hash((self.name, self.phase, self.form))

@@ -74,9 +74,9 @@ def plot_left(marks: tuple[tuple[float, str], ...]) -> float:
     return math.ceil(MARGIN - 6 + SIZES["axis"] * LINE + 6 + widest + 8)
 
 
-def title_strip(ladder: Ladder, width: float) -> Strip:
-    """The title over at most two lines."""
-    block = paragraph(as_rich(ladder.title), "title", width - 2 * MARGIN, lines=2, bold=True)
+def title_strip(ladder: Ladder, width: float, *, lines: int = 2) -> Strip:
+    """The title over at most ``lines`` lines."""
+    block = paragraph(as_rich(ladder.title), "title", width - 2 * MARGIN, lines=lines, bold=True)
     return Strip(block.h + (16 if block.h else 8), block.at(Rect(MARGIN, 10, width, 0)))
 
 
@@ -97,31 +97,32 @@ def key_strip(ladder: Ladder, left: float, width: float) -> Strip:
     return Strip(y + row + 4, tuple(texts), tuple(keys))
 
 
-def footer_strip(ladder: Ladder, width: float, *, left: float) -> Strip:
-    """The list of reactions in columns, then the notes."""
+def footer_strip(ladder: Ladder, width: float, *, left: float, lines: int = 4) -> Strip:
+    """The list of reactions in columns, then the notes, each over at most ``lines`` lines."""
     room = width - left - MARGIN
     # a reaction on one line reads better than a list a little shorter
-    texts, height = min(_arrangements(ladder, left, room), key=lambda found: found[1] + 8 * _wrapped(found[0]))
+    ways = _arrangements(ladder, left, room, lines - 1)
+    texts, height = min(ways, key=lambda found: found[1] + 8 * _wrapped(found[0]))
     height += 8 if height else 0
     for note in (*ladder.notes, *key_sentences(ladder)):
-        block = paragraph(as_rich(note), "note", min(room, _LONGEST_NOTE), lines=4)
+        block = paragraph(as_rich(note), "note", min(room, _LONGEST_NOTE), lines=lines)
         texts += block.at(Rect(left, height, 0, 0))
         height += block.h + 1
     return Strip(height, tuple(texts))
 
 
-def _arrangements(ladder: Ladder, left: float, room: float) -> list[tuple[list[TextBox], float]]:
+def _arrangements(ladder: Ladder, left: float, room: float, lines: int) -> list[tuple[list[TextBox], float]]:
     """The list of reactions with its height: one column a route, then one to four columns in reading order."""
     groups = [group for column in ladder.columns if (group := _equations(column.arrows))]
     if not groups:
         return [([], 0.0)]
-    found = [_listed(groups, left, room)] if room / len(groups) >= _LIST_COLUMN else []
+    found = [_listed(groups, left, room, lines)] if room / len(groups) >= _LIST_COLUMN else []
     flat = list(dict.fromkeys(arrow for group in groups for arrow in group))
     for count in range(1, 5):
         if count == 1 or room / count >= _LIST_COLUMN:
             size = math.ceil(len(flat) / count)
             parts = [flat[start : start + size] for start in range(0, len(flat), size)]
-            found.append(_listed(parts, left, room))
+            found.append(_listed(parts, left, room, lines))
     return found
 
 
@@ -129,7 +130,7 @@ def _wrapped(texts: list[TextBox]) -> int:
     return sum(not text.bold for text in texts) - sum(text.bold for text in texts)
 
 
-def _listed(groups: list[list[Arrow]], left: float, room: float) -> tuple[list[TextBox], float]:
+def _listed(groups: list[list[Arrow]], left: float, room: float, lines: int) -> tuple[list[TextBox], float]:
     texts: list[TextBox] = []
     height = 0.0
     each = (room + _LIST_GAP) / len(groups) - _LIST_GAP
@@ -137,7 +138,7 @@ def _listed(groups: list[list[Arrow]], left: float, room: float) -> tuple[list[T
         y = 0.0
         indent = _indent(group)
         for arrow in group:
-            entry = _entry(arrow, indent, each)
+            entry = _entry(arrow, indent, each, lines)
             texts += entry.at(Rect(left + index * (each + _LIST_GAP), y, 0, 0))
             y += entry.h + 2
         height = max(height, y)
@@ -175,16 +176,15 @@ def _equations(arrows: tuple[Arrow, ...]) -> list[Arrow]:
 def _indent(arrows: list[Arrow]) -> float:
     size = SIZES["equation"]
     return 8 + max(
-        text_width(plain(shorten(visible_rich(arrow.label), 80, size, bold=True)), size, bold=True)
-        for arrow in arrows
+        text_width(plain(shorten(visible_rich(arrow.label), 80, size, bold=True)), size, bold=True) for arrow in arrows
     )
 
 
-def _entry(arrow: Arrow, indent: float, width: float) -> Block:
-    """One reaction of the list: its label, then the equation over at most three lines."""
+def _entry(arrow: Arrow, indent: float, width: float, lines: int) -> Block:
+    """One reaction of the list: its label, then the equation over at most ``lines`` lines."""
     label = shorten(visible_rich(arrow.label), 80, SIZES["equation"], bold=True)
     full = plain(visible_rich(arrow.label))
     head = line_box(0, 0, label, "equation", bold=True, full="" if plain(label) == full else full)
-    body = paragraph(as_rich(arrow.equation), "equation", width - indent, lines=3)
+    body = paragraph(as_rich(arrow.equation), "equation", width - indent, lines=lines)
     aside = tuple(replace(text, x=text.x + indent) for text in body.texts)
     return Block(indent + body.w, max(head.h, body.h), (head, *aside))

@@ -6,11 +6,12 @@ overlap: a layout is tried at the size asked for, and where a text finds no free
 
 from __future__ import annotations
 
+from dataclasses import dataclass
 from statistics import median
 
 from routeheat.draw.blocks import Block, arrow_block, paragraph
 from routeheat.draw.declutter import Rect, Space, along, beside
-from routeheat.draw.frame import MARGIN, axis_boxes, footer_strip, key_strip, plot_left, ticks, title_strip
+from routeheat.draw.frame import MARGIN, Strip, axis_boxes, footer_strip, key_strip, plot_left, ticks, title_strip
 from routeheat.draw.geometry import ArrowMark, Geometry, Line, Scale, TextBox
 from routeheat.draw.marks import Row, arrow_mark, carriers, heat_range, level_after
 from routeheat.draw.slots import NARROWEST, Plan, Slots
@@ -39,22 +40,47 @@ def lay_out(ladder: Ladder, *, width: float | None = None, height: float | None 
     raise RuntimeError("no layout without overlap was found")
 
 
+@dataclass(frozen=True, slots=True)
+class Deck:
+    """What the plots of one figure share when they stand above each other: no plot has a title or notes of its own."""
+
+    levels: tuple[float, float]
+    """Lowest and highest level of the whole figure, so that equal heats are equally long in every plot."""
+    plot: float
+    """Height of each plot in px."""
+    reach: float
+    """How far a text may stand from what it names, px."""
+    whole_names: bool = True
+    """True: the names of columns must fit without being shortened."""
+
+
+def lay_out_deck(ladder: Ladder, width: float, deck: Deck) -> Geometry | None:
+    """One plot of exactly ``width`` px, or ``None`` where its texts do not fit into it."""
+    builder = _Builder(ladder, width, None, deck)
+    for plan in builder.slots.fixed(width, deck.reach):
+        geometry = builder.attempt(plan)
+        if geometry is not None:
+            return geometry
+    return None
+
+
 class _Builder:
     """Tries plans for one ladder."""
 
-    def __init__(self, ladder: Ladder, width: float | None, height: float | None) -> None:
+    def __init__(self, ladder: Ladder, width: float | None, height: float | None, deck: Deck | None = None) -> None:
         self.ladder = ladder
         self.width = width
         self.height = height
+        self.deck = deck
         self.overlay = ladder.overlay and len(ladder.columns) > 1
-        self.low, self.high = heat_range(ladder)
+        self.low, self.high = heat_range(ladder) if deck is None else deck.levels
         lengths = [
             abs(level_after(arrow) - arrow.start) / (self.high - self.low) * (_PLOT_HEIGHT - 2 * _PAD)
             for column in ladder.columns for arrow in column.arrows if arrow.end is not None
         ]  # fmt: skip
         one_line = bool(lengths) and median(lengths) < 34
         self.blocks = [[arrow_block(arrow, one_line=one_line) for arrow in column.arrows] for column in ladder.columns]
-        base = max(_PLOT_HEIGHT, height or 0.0)
+        base = deck.plot if deck else max(_PLOT_HEIGHT, height or 0.0)
         # a higher plot may get finer ticks with longer texts
         self.left = max(plot_left(self._ticks(base * tall)) for tall in (0.5, 1.0, 1.25, 1.7, 2.2, 4.0, 16.0))
         self.slots = Slots(ladder, self.blocks, self.left)
@@ -79,9 +105,12 @@ class _Builder:
             ]
             naming = max((block.h for block in headings), default=0.0)
             naming += 8 if naming else 0
+            if self.deck and self.deck.whole_names and any(text.full for block in headings for text in block.texts):
+                return None
         top = title.height + naming
         around = top + below + 26
         plot = max(_LOWEST_PLOT, self.height - around) if self.height else _PLOT_HEIGHT
+        plot = self.deck.plot if self.deck else plot
         bottom = top + plot * plan.tall
         scale = self._scale(top, bottom)
         right = width - MARGIN
@@ -107,11 +136,11 @@ class _Builder:
         sides = [(self.left, right) if self.overlay or plan.apart else (row.left, row.right) for row in rows]
         if not self._place_captions(space, marks, sides, plan.reach, texts, leaders):
             return None
-        footer = footer_strip(ladder, width, left=MARGIN)
+        footer = Strip(0.0, ()) if self.deck else footer_strip(ladder, width, left=MARGIN)
         texts += footer.moved(bottom + 14)
         return Geometry(
-            width=width, height=bottom + 14 + footer.height + 12, scale=scale, axis=axis, arrows=tuple(marks),
-            carriers=lines, leaders=tuple(leaders),
+            width=width, height=bottom + 14 + footer.height + (0 if self.deck else 12), scale=scale, axis=axis,
+            arrows=tuple(marks), carriers=lines, leaders=tuple(leaders),
             keys=tuple(Line(k.x0, k.y0 + title.height, k.x1, k.y1 + title.height, k.series) for k in keys.keys)
             if keys else (),
             texts=tuple(texts), overlay=self.overlay, title=visible(plain(ladder.title)), alt=visible(ladder.alt),

@@ -8,6 +8,8 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
+from routeheat.present.ladder import Role
+
 SERIES = ("#0072b2", "#d55e00", "#b5588f", "#777777", "#a0740b", "#3a97d4")
 """Stroke colours of the columns in order; at least 3:1 against white and against #111."""
 DASHES = ("", "8 3", "2.5 2.5", "10 3 2.5 3", "5 2 5 5", "14 4")
@@ -22,6 +24,16 @@ HEADS: tuple[tuple[tuple[float, float], ...], ...] = (
     ((0, 0), (-1.5, 0.6), (1.5, 0.6)),
 )
 """Outlines of heads: (across, back from the tip), in half-widths and lengths."""
+HEAD_LENGTH = 9.0
+HEAD_HALF = 4.6
+WIDTHS: dict[Role, float] = {"step": 1.9, "known": 1.9, "side": 1.0, "direct": 1.5}
+"""Widths of shafts in px."""
+DOUBLE = 2.6
+"""Half the distance in px between the two lines of a direct arrow."""
+BASELINE = 1.0
+"""Distance in font sizes from the top of a line to its baseline."""
+SHIFTS = {"sub": 0.22, "sup": -0.36}
+"""Downward shifts of sub- and superscripts in font sizes."""
 
 
 @dataclass(frozen=True, slots=True)

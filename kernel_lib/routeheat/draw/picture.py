@@ -2,10 +2,9 @@
 
 from __future__ import annotations
 
-from routeheat.draw.layout import lay_out
+from routeheat.draw.arrange import Drawing, arrange
 from routeheat.draw.svg import paint, static_svg
 from routeheat.present.html import figure_html
-from routeheat.present.ladder import Ladder
 from routeheat.present.markup import plain
 
 
@@ -15,25 +14,25 @@ class Picture(str):
     An image with its bytes inside is the one form that trusted, untrusted and converted notebooks all show.
     """
 
-    __slots__ = ("_height", "_ladder", "_width")
+    __slots__ = ("_height", "_drawing", "_width")
 
-    _ladder: Ladder
+    _drawing: Drawing
     _width: float | None
     _height: float | None
 
     @classmethod
-    def of(cls, ladder: Ladder, width: float | None = None, height: float | None = None) -> Picture:
+    def of(cls, drawing: Drawing, width: float | None = None, height: float | None = None) -> Picture:
         """The diagram painted for the page it stands in; ``width`` and ``height`` in px."""
-        made = cls(paint(lay_out(ladder, width=width, height=height)))
-        made._ladder, made._width, made._height = ladder, width, height
+        made = cls(paint(arrange(drawing, width=width, height=height)))
+        made._drawing, made._width, made._height = drawing, width, height
         return made
 
     @property
     def alt(self) -> str:
         """The diagram in words."""
-        return self._ladder.alt or plain(self._ladder.title)
+        return self._drawing.alt or plain(self._drawing.title)
 
     def _repr_mimebundle_(self, include: object = None, exclude: object = None) -> dict[str, str]:  # noqa: ARG002
         """Words for a terminal, a picture for a notebook; deterministic."""
-        static = static_svg(self._ladder, width=self._width, height=self._height)
+        static = static_svg(self._drawing, width=self._width, height=self._height)
         return {"text/plain": self.alt, "text/html": figure_html(static, self.alt)}

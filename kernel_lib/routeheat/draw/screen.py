@@ -4,34 +4,29 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
+from routeheat.draw.arrange import Drawing, arrange
+from routeheat.draw.chart import Chart
 from routeheat.draw.geometry import ArrowMark, Geometry, Line, TextBox
-from routeheat.draw.layout import lay_out
 from routeheat.draw.looks import PLOTLY_DASHES, SERIES, STATIC, cycle
-from routeheat.present.ladder import Ladder
-from routeheat.present.markup import Rich
-from routeheat.present.text import visible
+from routeheat.draw.screen_chart import chart_data
+from routeheat.draw.screen_text import FONT, html, plotly_text, px
 
 if TYPE_CHECKING:
     from plotly.graph_objects import Figure
 
-FONT = "Arial, Helvetica, DejaVu Sans, sans-serif"
-_TAGS = {"": ("", ""), "sub": ("<sub>", "</sub>"), "sup": ("<sup>", "</sup>"), "italic": ("<i>", "</i>")}
-_ENTITIES = {ord("&"): "&amp;", ord("<"): "&lt;", ord(">"): "&gt;", ord("$"): "&#36;", ord("%"): "&#37;"}
 _WIDTHS = {"step": 2.0, "known": 2.0, "side": 1.1, "direct": 4.0}
 _SYMBOLS = ("arrow", "arrow-wide")
 """Heads whose tip, not whose middle, stands at the level."""
 
 
-def plotly_text(text: str) -> str:
-    """``text`` harmless in plotly: no pseudo-HTML, no MathJax (``$``), no template (``%{``), no hidden characters."""
-    return visible(text).translate(_ENTITIES)
-
-
-def figure(ladder: Ladder) -> Figure:
-    """The diagram as a :class:`plotly.graph_objects.Figure` with explicit size; equal ladders give equal JSON."""
+def figure(drawing: Drawing) -> Figure:
+    """The diagram as a :class:`plotly.graph_objects.Figure` with explicit size; equal shapes give equal JSON."""
     import plotly.graph_objects as go
 
-    geometry = lay_out(ladder)
+    geometry = arrange(drawing)
+    if isinstance(geometry, Chart):
+        points, around = chart_data(geometry)
+        return go.Figure(data=points, layout=around, skip_invalid=False)
     traces = _levels(geometry)
     traces += [_arrow(arrow, geometry) for arrow in geometry.arrows]
     traces += _whiskers(geometry)
@@ -46,8 +41,8 @@ def _layout(geometry: Geometry) -> dict[str, Any]:
         "width": round(geometry.width),
         "height": round(geometry.height),
         "margin": {
-            "l": axis.x, "r": _r(geometry.width - axis.x_right), "t": _r(axis.y_top),
-            "b": _r(geometry.height - axis.y_bottom), "pad": 0,
+            "l": axis.x, "r": px(geometry.width - axis.x_right), "t": px(axis.y_top),
+            "b": px(geometry.height - axis.y_bottom), "pad": 0,
         },
         "paper_bgcolor": "#ffffff",
         "plot_bgcolor": "#ffffff",
@@ -55,7 +50,7 @@ def _layout(geometry: Geometry) -> dict[str, Any]:
         "showlegend": False,
         "hovermode": "closest",
         "hoverlabel": {"align": "left", "bgcolor": "#ffffff", "font": {"color": STATIC.ink}},
-        "xaxis": {"visible": False, "range": [axis.x, _r(axis.x_right)]},
+        "xaxis": {"visible": False, "range": [axis.x, px(axis.x_right)]},
         "yaxis": {
             "range": [scale.heat(axis.y_bottom), scale.heat(axis.y_top)],
             "tickmode": "array",
@@ -63,7 +58,7 @@ def _layout(geometry: Geometry) -> dict[str, Any]:
             "ticktext": [plotly_text(tick.text) for tick in axis.ticks],
             "ticks": "outside", "ticklen": 5, "showline": True, "linecolor": STATIC.ink, "tickcolor": STATIC.ink,
             "showgrid": False, "zeroline": True, "zerolinecolor": "#b0b0b0", "zerolinewidth": 1,
-            "title": {"text": _html(axis.title), "standoff": 8, "font": {"size": 13.5}},
+            "title": {"text": html(axis.title), "standoff": 8, "font": {"size": 13.5}},
         },
         "annotations": [_annotation(box, geometry) for box in geometry.texts if box.kind not in ("axis", "tick")],
         "shapes": [
@@ -81,7 +76,7 @@ def _levels(geometry: Geometry) -> list[dict[str, Any]]:
     return [
         {
             "type": "scatter", "mode": "lines", "hoverinfo": "skip",
-            "x": [x for line in lines for x in (_r(line.x0), _r(line.x1), None)],
+            "x": [x for line in lines for x in (px(line.x0), px(line.x1), None)],
             "y": [y for line in lines for y in (geometry.scale.heat(line.y0), geometry.scale.heat(line.y1), None)],
             "line": {"color": STATIC.ink if series is None else SERIES[cycle(series)], "width": 1.0},
         }
@@ -103,7 +98,7 @@ def _arrow(arrow: ArrowMark, geometry: Geometry) -> dict[str, Any]:
         "type": "scatter",
         "name": plotly_text(arrow.label),
         "mode": "lines+markers" if arrow.entered else "lines",
-        "x": [_r(arrow.x)] * count,
+        "x": [px(arrow.x)] * count,
         "y": levels,
         "line": {
             "color": colour, "width": _WIDTHS[arrow.role] if arrow.entered else 2.2,
@@ -128,7 +123,7 @@ def _whiskers(geometry: Geometry) -> list[dict[str, Any]]:
     for arrow in geometry.arrows:
         if arrow.whisker:
             low, high = (geometry.scale.heat(y) for y in arrow.whisker)
-            point = (_r(arrow.whisker_x), (low + high) / 2, (high - low) / 2)
+            point = (px(arrow.whisker_x), (low + high) / 2, (high - low) / 2)
             groups.setdefault((arrow.series, arrow.complete), []).append(point)
     return [
         {
@@ -148,9 +143,9 @@ def _annotation(box: TextBox, geometry: Geometry) -> dict[str, Any]:
     inside = box.kind in ("caption", "label", "level")
     x = {"start": box.x, "middle": box.x + box.w / 2, "end": box.x + box.w}[box.anchor]
     y = box.y + box.h / 2
-    text = _html(box.rich)
+    text = html(box.rich)
     place: dict[str, Any] = (
-        {"xref": "x", "yref": "y", "x": _r(x), "y": geometry.scale.heat(y)}
+        {"xref": "x", "yref": "y", "x": px(x), "y": geometry.scale.heat(y)}
         if inside
         else {"xref": "paper", "yref": "paper", "x": _paper_x(x, geometry), "y": _paper_y(y, geometry)}
     )
@@ -166,7 +161,7 @@ def _annotation(box: TextBox, geometry: Geometry) -> dict[str, Any]:
 
 def _shape(line: Line, geometry: Geometry) -> dict[str, Any]:
     return {
-        "type": "line", "xref": "x", "yref": "y", "x0": _r(line.x0), "x1": _r(line.x1),
+        "type": "line", "xref": "x", "yref": "y", "x0": px(line.x0), "x1": px(line.x1),
         "y0": geometry.scale.heat(line.y0), "y1": geometry.scale.heat(line.y1),
         "line": {"color": STATIC.muted, "width": 0.7},
     }  # fmt: skip
@@ -181,10 +176,6 @@ def _sample(key: Line, geometry: Geometry) -> dict[str, Any]:
     }  # fmt: skip
 
 
-def _html(rich: Rich) -> str:
-    return "".join(_TAGS[run.style][0] + plotly_text(run.text) + _TAGS[run.style][1] for run in rich)
-
-
 def _paper_x(x: float, geometry: Geometry) -> float:
     axis = geometry.axis
     return round((x - axis.x) / (axis.x_right - axis.x), 6)
@@ -193,7 +184,3 @@ def _paper_x(x: float, geometry: Geometry) -> float:
 def _paper_y(y: float, geometry: Geometry) -> float:
     axis = geometry.axis
     return round((axis.y_bottom - y) / (axis.y_bottom - axis.y_top), 6)
-
-
-def _r(value: float) -> float:
-    return round(value, 2)

@@ -87,6 +87,22 @@ class Slots:
         for extra in range(_ROUNDS):
             yield Plan(1.0, stretch, 1.0 + 0.5 * extra, reach=_ANYWHERE, apart=True)
 
+    def fixed(self, width: float, reach: float) -> Iterator[Plan]:
+        """Sizes of exactly ``width`` px and one height; none when the arrows alone are wider."""
+        slots = max(1, self._count())
+        full = self.content(Plan(1.0, 0.0, 1.0))
+        least = self.content(Plan(0.0, 0.0, 1.0))
+        if full <= width:
+            yield Plan(1.0, min((width - full) / slots, 56.0), 1.0, reach)
+        elif least <= width:
+            yield Plan((width - least) / (full - least), 0.0, 1.0, reach)
+        for sub in _SUBS[1:] if self.overlay else ():
+            if self.content(Plan(1.0, 0.0, 1.0, sub=sub)) <= width:
+                yield Plan(1.0, 0.0, 1.0, reach, sub)
+        apart = Plan(1.0, 0.0, 1.0, reach, apart=True)
+        if self.content(apart) <= width:
+            yield apart
+
     def content(self, plan: Plan) -> float:
         """Width of the canvas that a plan needs."""
         rows = self.rows(plan, 0.0)

@@ -5,12 +5,13 @@ that share a formula, or two phases, never close a cycle. Enthalpy is a state fu
 ``ΔrH(target) = Σ c · ΔrH(row)`` (G. H. Hess, Pogg. Ann. Phys. 50 (1840) 385; P. W. Atkins, J. de Paula, Physical
 Chemistry, Hess's law).
 May import: the other modules of :mod:`routeheat.hess`, :mod:`routeheat.chem`, :mod:`routeheat.present`,
-:mod:`routeheat.errors`.
+:mod:`routeheat.units`, :mod:`routeheat.errors`.
 """
 
 from __future__ import annotations
 
 import re
+from collections import Counter
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from fractions import Fraction
@@ -21,7 +22,7 @@ from routeheat.chem.reaction import Reaction
 from routeheat.chem.row import Row, Rows
 from routeheat.errors import OutOfReach, UnitError
 from routeheat.hess import ledger
-from routeheat.hess.exact import presolve, solve
+from routeheat.chem.exact import presolve, solve
 from routeheat.hess.numbering import Numbering
 from routeheat.hess.reach import explain
 from routeheat.hess.shortest import Shortest, ranked, short_cycles
@@ -29,6 +30,7 @@ from routeheat.hess.shortest import alternatives as best_combinations
 from routeheat.present.ladder import Ladder
 from routeheat.present.show import Shown
 from routeheat.present.table import Table
+from routeheat.units import KJ_PER_MOL
 
 
 @dataclass(frozen=True, slots=True, repr=False)
@@ -96,13 +98,13 @@ class Combination(Shown):
         def rational(value: Fraction) -> Any:
             return sympy.Rational(value.numerator, value.denominator)
 
-        expressions = {row.label: sympy.Integer(0) for row in self.pool}
+        parts: dict[str, list[Any]] = {row.label: [] for row in self.pool}
         for label, c in self.coefficients.items():
-            expressions[label] += rational(c)
+            parts[label].append(rational(c))
         for parameter, cycle in zip(self.parameters, self.cycles, strict=True):
             for label, value in cycle.items():
-                expressions[label] += rational(value) * sympy.Symbol(parameter)
-        return {label: expression for label, expression in expressions.items() if expression != 0}
+                parts[label].append(rational(value) * sympy.Symbol(parameter))
+        return {label: sympy.Add(*terms) for label, terms in parts.items() if terms}
 
     @property
     def heat(self) -> HeatSum:
@@ -228,7 +230,7 @@ def _unfit(row: Row) -> str:
         return "in the reaction mixture"
     if row.heat is None:
         return "no heat typed"
-    if row.heat.amount is not None:
+    if row.heat.amount is not None and (row.heat.basis or row.heat.amount.unit != KJ_PER_MOL):
         try:
             row.heat.factor(row.reaction)
         except (ValueError, UnitError) as fault:
@@ -242,8 +244,14 @@ def _in_own_order(rows: Sequence[Row]) -> list[Row]:
     def natural(label: str) -> list[tuple[int, str]]:
         return [(int(digits or 0), other) for digits, other in re.findall(r"([0-9]+)|([^0-9]+)", label)]
 
-    def key(row: Row) -> tuple[str, str, str, list[tuple[int, str]], str]:
+    texts = {row.label: row.reaction.text for row in rows}
+    shared = Counter(texts.values())
+
+    def key(row: Row) -> tuple[object, ...]:
+        text = texts[row.label]
+        if shared[text] == 1:
+            return (text,)
         heat = row.heat.text if row.heat is not None else ""
-        return row.reaction.text, heat, row.source, natural(row.label), row.label
+        return text, heat, row.source, natural(row.label), row.label
 
     return sorted(rows, key=key)

@@ -37,9 +37,9 @@ def sum_text(terms: Terms) -> str:
 
 def heat_of(row: Row, c: Fraction, k: float) -> HeatSum:
     """``c`` times the heat of a row, which must have one."""
-    datum = row.datum
-    assert datum is not None
-    return HeatSum.of(datum, c, k)
+    heat = row.heat_sum(k)
+    assert heat is not None
+    return heat.scaled(c)
 
 
 def ledger(target: Reaction, name: str, terms: Terms, heat: HeatSum) -> Table:
@@ -78,10 +78,8 @@ def row_table(target: Reaction, name: str, terms: Terms, heat: HeatSum) -> Table
     """One line per row used: coefficient, scaled equation, its heat, what it contributes, where it comes from."""
     lines: list[tuple[Cell, ...]] = []
     for row, c in terms:
-        datum = row.datum
-        assert datum is not None
-        spread = "not stated" if datum.u is None else float(abs(c) * datum.u)
         own, part = heat_of(row, Fraction(1), heat.k), heat_of(row, c, heat.k)
+        spread: Cell = part.u if part.complete else "not stated"
         lines.append((row.label, c, row.reaction.scaled(c).rich, own.reading, part.reading, spread, row.source))
     total_u: Cell = heat.u if heat.complete else f"at least {number(heat.u, 2)}"
     if heat.terms and all(datum.u is None for datum, _ in heat.terms):
@@ -149,7 +147,6 @@ def ladder(target: Reaction, name: str, terms: Terms, heat: HeatSum) -> Ladder:
         "kJ mol⁻¹",
         heat.k,
         notes=(
-            f"a whisker is the expanded uncertainty of its level, {coverage(heat.k)}",
             *([f"heat of {', '.join(unknown)} not known: levels go on where they stood"] if unknown else []),
             *_notes(target, terms, heat),
         ),
@@ -181,8 +178,6 @@ def _notes(target: Reaction, terms: Terms, heat: HeatSum) -> tuple[str, ...]:
     notes = []
     if heat.not_stated:
         notes.append(f"uncertainty at least: {', '.join(heat.not_stated)} not stated")
-    if any(datum.u is not None for datum, _ in heat.terms):
-        notes.append(f"± is the expanded uncertainty, {coverage(heat.k)}")
     for label, reaction in [("the target", target), *((row.label, row.reaction) for row, _ in terms)]:
         if reaction.imbalance:
             notes.append(f"{label} does not balance and is used as typed: {imbalance_text(reaction)}")

@@ -3,7 +3,7 @@
 A target outside the span of the rows changes some quantity ``Σ w · ν`` over species that no row changes (Fredholm
 alternative). The sparsest such quantity is a shortest combination again, of species over the rows they take part in.
 So is the smallest unmet balance: target minus a combination of rows, with the fewest species left over.
-May import: :mod:`routeheat.hess.exact`, :mod:`routeheat.hess.shortest`, :mod:`routeheat.chem`,
+May import: :mod:`routeheat.chem.exact`, :mod:`routeheat.hess.shortest`, :mod:`routeheat.chem`,
 :mod:`routeheat.present`, :mod:`routeheat.errors`.
 """
 
@@ -20,7 +20,7 @@ from routeheat.chem.reaction import Reaction
 from routeheat.chem.row import Row
 from routeheat.chem.species import Species
 from routeheat.errors import OutOfReach
-from routeheat.hess.exact import Span, Vector, primitive
+from routeheat.chem.exact import Span, Vector, primitive
 from routeheat.hess.numbering import Numbering
 from routeheat.hess.shortest import alternatives, shortest
 from routeheat.present.numbers import MINUS, fraction
@@ -243,7 +243,8 @@ class _Gap:
         found = shortest({number: vector for number, vector in left.items() if vector}, self.residual)
         assert found is not None
         balance: dict[int, Fraction] = found.coefficients
-        if _size(balance) >= _size(self.goal):
+        one_sided = len({nu > 0 for nu in balance.values()}) == 1
+        if one_sided or _size(balance) >= _size(self.goal):
             balance = self.goal
         # what the known rows deliver comes before what the target starts from
         order = [*(n for n in self.order if n not in self.goal), *self.goal]

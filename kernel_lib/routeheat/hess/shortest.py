@@ -6,17 +6,18 @@ come first in the mapping given (compared one after another, first row first). W
 
 Finding the fewest rows is hard in general (B. K. Natarajan, SIAM J. Comput. 24 (1995) 227), so the search has a budget,
 and every answer says whether the search was complete.
-May import: :mod:`routeheat.hess.exact`.
+May import: :mod:`routeheat.chem.exact`.
 """
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Hashable, Iterable, Mapping
 from dataclasses import dataclass
 from fractions import Fraction
 from typing import Generic, TypeVar
 
-from routeheat.hess.exact import Solution, Span, Vector, presolve, primitive, solve, subtract
+from routeheat.chem.exact import Solution, Span, Vector, presolve, primitive, solve, subtract
 
 K = TypeVar("K", bound=Hashable)
 L = TypeVar("L", bound=Hashable)
@@ -50,8 +51,9 @@ def alternatives(
     They differ in the rows they use: the coefficients over independent rows are unique. When the budget runs out the
     tuple holds what was found until then, at least one, and the doubtful ones are not ``proved``.
     """
-    part = solve(rows, target)
-    return () if part is None else ranked(rows, target, part, count, budget=budget)
+    possible = {label: rows[label] for label in presolve(rows, target)}
+    part = solve(possible, target)
+    return () if part is None else ranked(possible, target, part, count, budget=budget)
 
 
 def ranked(
@@ -75,11 +77,17 @@ def ranked(
             if len(found) >= count:
                 break
     except _BudgetSpent:
-        best = _exchanged(part.coefficients, part.cycles, place)
-        for support in (*search.found, tuple(best)):
+        for support in search.found:
             coefficients = _over(support, used, target)
-            if coefficients not in found:
+            if len(coefficients) == len(support):
                 found.append(coefficients)
+        if not found:
+            found.append(_over(_exchanged(part.coefficients, part.cycles), used, target))
+        for cycle in sorted(part.cycles, key=len):
+            if len(found) < count and not found[0].keys().isdisjoint(cycle):
+                coefficients = _over(_exchange(found[0], cycle), used, target)
+                if coefficients not in found:
+                    found.append(coefficients)
     found.sort(key=lambda coefficients: preference(coefficients, place))
     return tuple(Shortest(_ordered(c, used), len(c) <= proved_size) for c in found[:count])
 
@@ -227,21 +235,27 @@ def _ordered(coefficients: Mapping[L, V], order: Iterable[L]) -> dict[L, V]:
     return {label: coefficients[label] for label in order if label in coefficients}
 
 
-def _exchanged(
-    coefficients: dict[L, Fraction], cycles: Iterable[Mapping[L, int]], place: Mapping[L, int]
-) -> dict[L, Fraction]:
-    """A better combination reached by adding multiples of cycles that remove a row, as long as that helps."""
+def _exchanged(coefficients: dict[L, Fraction], cycles: Iterable[Mapping[L, int]]) -> dict[L, Fraction]:
+    """A combination with fewer rows, by adding multiples of cycles that remove more rows than they bring in."""
     best = coefficients
     better = True
     while better:
         better = False
         for cycle in cycles:
-            for label in [label for label in cycle if label in best]:
-                factor = best.get(label, Fraction(0)) / cycle[label]
-                changed = dict(best)
-                for other, value in cycle.items():
-                    changed[other] = changed.get(other, Fraction(0)) - factor * value
-                changed = {other: value for other, value in changed.items() if value}
-                if preference(changed, place) < preference(best, place):
+            shared = sum(label in best for label in cycle)
+            # at most the shared rows go, and all others of the cycle come
+            if 2 * shared > len(cycle):
+                changed = _exchange(best, cycle)
+                if len(changed) < len(best):
                     best, better = changed, True
     return best
+
+
+def _exchange(coefficients: Mapping[L, Fraction], cycle: Mapping[L, int]) -> dict[L, Fraction]:
+    """Add the multiple of a cycle that removes most rows; the two must share one."""
+    ratios = Counter(coefficients[label] / value for label, value in cycle.items() if label in coefficients)
+    factor = ratios.most_common(1)[0][0]
+    changed = dict(coefficients)
+    for label, value in cycle.items():
+        changed[label] = changed.get(label, Fraction(0)) - factor * value
+    return {label: value for label, value in changed.items() if value}

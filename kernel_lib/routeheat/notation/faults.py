@@ -29,7 +29,8 @@ def render(text: str, faults: Iterable[Fault]) -> str:
 
 
 def _render_one(lines: list[str], fault: Fault) -> str:
-    head = f"line {fault.line}, column {fault.column}: {fault.message}"
+    notice = "notice: " if fault.severity == "notice" else ""
+    head = f"line {fault.line}, column {fault.column}: {notice}{fault.message}"
     repair = [f"  {fault.hint}"] if fault.hint else []
     if not 1 <= fault.line <= len(lines):
         return "\n".join([head, *repair])
@@ -41,12 +42,14 @@ def _render_one(lines: list[str], fault: Fault) -> str:
     length = max(1, min(fault.length, len(window) - (start - cut)))
     carets = "^" * max(1, sum(_columns(char) for char in window[start - cut : start - cut + length]))
     pad = "".join("\t" if char == "\t" else " " * _columns(char) for char in window[: start - cut])
-    shown = "".join(char if char == "\t" or _columns(char) and char.isprintable() else _blank(char) for char in window)
+    shown = "".join(map(_visible, window))
     return "\n".join([head, number + shown, " " * (len(number) - 2) + "| " + pad + carets, *repair])
 
 
-def _blank(char: str) -> str:
-    """Characters without a width of their own stay if they combine and vanish if they control."""
+def _visible(char: str) -> str:
+    """Special blanks become plain ones; characters without a width stay if they combine and vanish if they control."""
+    if _columns(char):
+        return char if char == "\t" or char.isprintable() else " "
     return char if unicodedata.combining(char) else ""
 
 

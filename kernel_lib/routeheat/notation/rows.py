@@ -3,63 +3,28 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Callable, Iterator
-from dataclasses import dataclass, field
+from collections.abc import Iterator
+from dataclasses import dataclass, field, replace
 from fractions import Fraction
-from typing import Literal, TypeVar, cast
+from typing import Literal, NoReturn, cast
 
-from routeheat.chem.balance import (
-    PHASE_CHANGES,
-    combustion,
-    completion,
-    formation,
-    imbalance_text,
-    phase_change,
-)
+from routeheat.chem.balance import completion, imbalance_text
 from routeheat.chem.measured import Measured
 from routeheat.chem.reaction import Reaction
 from routeheat.chem.row import Heat, Row
 from routeheat.chem.species import Species
-from routeheat.chem.step import Recycle, Step
-from routeheat.errors import Fault, nearest
-from routeheat.notation.grammar import SpeciesReader
-from routeheat.notation.keys import Key, Where, find_key, spellings
-from routeheat.notation.quantity import read_quantity, require_dimension
+from routeheat.chem.step import OPERATIONS, Recycle, Step
+from routeheat.notation.context import Context
+from routeheat.notation.keys import Key, Where, find_key, key_order, names_in, nearest_key
+from routeheat.notation.named import read_named
 from routeheat.notation.sections import Entry, parts
-from routeheat.notation.tokens import Piece, Trouble, split_list
-from routeheat.units import CELSIUS, KJ, KJ_PER_KG, KJ_PER_MOL, PURE
+from routeheat.notation.tokens import LABEL, Piece, Trouble
+from routeheat.notation.values import read_value
 
-LONGEST_QUOTE = 1000
-"""Characters of a quoted text."""
-
-_LABEL = re.compile(r"\[\s*([^\[\]|\"#]*?)\s*\]")
-_NAMED = re.compile(
-    r"(formation|combustion|fusion|vapori[sz]ation|sublimation|melting|evaporation|boiling)\s+of\s+", re.IGNORECASE
-)
-_SYNONYMS = {"vaporization": "vaporisation", "evaporation": "vaporisation", "boiling": "vaporisation",
-             "melting": "fusion"}  # fmt: skip
-_T = TypeVar("_T")
-
-
-@dataclass(slots=True)
-class Context:
-    """What reading one sheet shares: names, the sheet's k, and what was found on the way."""
-
-    reader: SpeciesReader
-    sheet_k: Fraction
-    faults: list[Fault] = field(default_factory=list)
-    assumed: Piece | None = None
-    """The first number whose ``±`` took the coverage factor of the sheet."""
-    unused: dict[str, Piece] = field(default_factory=dict)
-    """First place of every key that nothing uses yet."""
-
-    def attempt(self, action: Callable[[], _T]) -> _T | None:
-        """The result of ``action``, or ``None`` with its fault collected."""
-        try:
-            return action()
-        except Trouble as trouble:
-            self.faults.append(trouble.fault)
-            return None
+_KIND_OF_ENTRY: dict[Where, str] = {
+    "species": "a species", "known": "a known row", "target": "a target", "step": "a step",
+}  # fmt: skip
+_USUAL_SIGN = {"combustion": -1, "vaporisation": 1, "fusion": 1, "sublimation": 1}
 
 
 @dataclass(slots=True)
@@ -83,140 +48,120 @@ class Keyed:
         """Value of a species key, or ``None``."""
         return cast("Species | None", self.values.get(name))
 
+    def settings(self, *used: str) -> tuple[tuple[str, object], ...]:
+        """Keys that are kept as typed, in the order of the table of keys; ``used`` have a place of their own."""
+        kept = [(name, value) for name, value in self.values.items() if name not in used]
+        return tuple(sorted(kept, key=lambda pair: key_order(pair[0])))
 
-def read_row(entry: Entry, context: Context, where: Where) -> tuple[Row, Keyed] | None:
+
+@dataclass(slots=True)
+class ReadRow:
+    """One row as read."""
+
+    row: Row
+    keyed: Keyed
+    places: dict[Species, Piece]
+    """Where each of its species was read."""
+    clean: bool
+    """False when the row has faults."""
+
+
+def read_row(entry: Entry, context: Context, where: Where) -> ReadRow | None:
     """A row with its keys; ``None`` when its equation cannot be read (the faults are in the context)."""
     pieces = list(parts(entry))
-    label, body = _label(pieces[0], context)
+    label, body = _label(pieces, context)
     if body is None:
         return None
-    before = len(context.faults)
+    before, noticed = len(context.faults), len(context.reader.notices)
+    context.reader.places = {}
     read = context.attempt(lambda: _reaction(body, context))
+    places = context.reader.places
+    context.reaction = None if read is None else read[0]
     keyed = read_keys(pieces[1:], context, where)
-    for index in range(before, len(context.faults)):
-        context.faults[index] = _about(context.faults[index], label)
-    if read is None:
-        return None
-    reaction, kind, subject = read
-    _check_balance(reaction, body, label, context)
-    heat = cast("Heat | None", keyed.values.get("dH"))
-    if heat is not None:
-        heat = _checked_heat(heat, reaction, kind, keyed.places["dH"], label, context)
-    settings = tuple(
-        (name, value) for name, value in keyed.values.items() if name == "note" or not _feeds(name)
-    )
-    row = Row(label, reaction, heat, kind, subject, keyed.text("source"), settings, entry.head.line)
-    return row, keyed
+    result = None
+    if read is not None:
+        reaction, kind, subject = read
+        _check_balance(reaction, body, context)
+        heat = cast("Heat | None", keyed.values.get("dH"))
+        if heat is not None and heat.amount is not None and heat.amount.value * _USUAL_SIGN.get(kind, 0) < 0:
+            usual = "exothermic: dH is negative" if _USUAL_SIGN[kind] < 0 else "endothermic: dH is positive"
+            context.faults.append(keyed.places["dH"].fault(f"is the sign right? {kind} is {usual}", notice=True))
+        settings = keyed.settings(*_OF_ROWS)
+        row = Row(label, reaction, heat, kind, subject, keyed.text("source"), settings, entry.head.line)
+        clean = all(fault.severity == "notice" for fault in context.faults[before:])
+        result = ReadRow(row, keyed, places, clean)
+    context.reaction = None
+    for found, start in ((context.faults, before), (context.reader.notices, noticed)):
+        found[start:] = [replace(fault, subject=label) for fault in found[start:]]
+    return result
 
 
-def _feeds(name: str) -> bool:
-    key = find_key(name)
-    return key is not None and bool(key.feeds)
+_OF_ROWS = (
+    "dH", "source", "yield", "T", "conc", "cp", "product", "limiting", "side", "amount", "loss", *OPERATIONS,
+    "equilibrium",
+)  # fmt: skip
+"""Keys with a place of their own in a row or a step."""
 
 
-def _about(fault: Fault, label: str) -> Fault:
-    return Fault(fault.message, fault.line, fault.column, fault.length, fault.hint, fault.severity, label)
-
-
-def _label(piece: Piece, context: Context) -> tuple[str, Piece | None]:
-    match = _LABEL.match(piece.text)
-    if match is None:
+def _label(pieces: list[Piece], context: Context) -> tuple[str, Piece | None]:
+    """The label and what stands behind it; an equation may start on the line below."""
+    piece = pieces[0]
+    end = piece.text.find("]")
+    if not piece.text.startswith("[") or end < 0:
         hint = "start the row with its label, like [K1]"
-        if find_key(piece.text.split(" ")[0]) is not None:
+        if piece.text.startswith("["):
+            hint = "close the label with ]"
+        elif re.match(r"use\b", piece.text):
+            hint = "only a route has use lines, with labels, like use A1, A2"
+        elif find_key(piece.text.split(" ")[0]) is not None:
             hint = "this key stands before the first row"
         context.faults.append(piece.fault("a row starts with a label in brackets", hint))
         return "", None
-    label = match[1]
-    if not re.fullmatch(r"[^\W_][\w.\-+*']{0,39}", label):
+    label = piece.text[1:end].strip()
+    if LABEL.fullmatch(label) is None:
+        hint = "like [K1], at most 40 characters"
         context.faults.append(
-            piece.fault(
-                "a label is a word of letters, digits and . - + * _", "like [K1], at most 40 characters",
-                match.start(), match.end(),
-            )  # fmt: skip
+            piece.fault("a label is one word of letters, digits and . - + * _", hint, 0, end + 1)
         )
         return "", None
-    body = piece.part(match.end()).strip()
-    if not body.text:
-        context.faults.append(piece.fault("a reaction is missing behind the label", "like A(l) -> B(l)", subject=label))
-        return label, None
-    return label, body
+    body = piece.part(end + 1).strip()
+    if body.text:
+        return label, body
+    if len(pieces) > 1 and find_key(pieces[1].text.split(" ")[0]) is None:
+        return label, pieces.pop(1)
+    context.faults.append(piece.fault("a reaction is missing behind the label", "like A(l) -> B(l)", subject=label))
+    return label, None
 
 
 def _reaction(body: Piece, context: Context) -> tuple[Reaction, str, Species | None]:
-    named = _NAMED.match(body.text)
-    if named is None:
-        return context.reader.equation(body), "reaction", None
-    kind = named[1].lower()
-    kind = _SYNONYMS.get(kind, kind)
-    rest = body.part(named.end()).strip()
-    if kind == "combustion":
-        return _burn(rest, context)
-    subject = context.reader.species(rest)
-    try:
-        if kind == "formation":
-            if not subject.phase:
-                rest.refuse("the phase is missing", f"like {subject.name}(l)")
-            return formation(subject), kind, subject
-        return _changed(kind, subject)
-    except ValueError as problem:
-        rest.refuse(str(problem))
+    named = read_named(body, context.reader)
+    return (context.reader.equation(body), "reaction", None) if named is None else named
 
 
-def _changed(kind: str, subject: Species) -> tuple[Reaction, str, Species | None]:
-    reaction = phase_change(kind, subject)
-    return reaction, kind, reaction.species[0]
-
-
-def _burn(rest: Piece, context: Context) -> tuple[Reaction, str, Species | None]:
-    split = re.search(r"\s+to\s+", rest.text)
-    if split is None:
-        rest.refuse(
-            "the products of the combustion are missing",
-            "like to CO2(g), H2O(l): with water as liquid or gas, HCl(aq) or HCl(g), SO2(g) or H2SO4(aq) the heat "
-            "differs by tens of kJ/mol",
-        )
-    subject = context.reader.species(rest.part(0, split.start()).strip())
-    products = [context.reader.species(part) for part in split_list(rest.part(split.end()))]
-    for item in (subject, *products):
-        if not item.phase:
-            rest.refuse(f"the phase of {item.name} is missing", f"like {item.name}(l)")
-    try:
-        return combustion(subject, products), "combustion", subject
-    except ValueError as problem:
-        rest.refuse(str(problem), "name every product that holds an element of the compound")
-
-
-def _check_balance(reaction: Reaction, body: Piece, label: str, context: Context) -> None:
+def _check_balance(reaction: Reaction, body: Piece, context: Context) -> None:
     if not reaction.net:
-        context.faults.append(body.fault("nothing changes in this reaction", subject=label))
-    elif reaction.imbalance and not reaction.unchecked:
-        message = f"does not balance: {imbalance_text(reaction)}"
-        context.faults.append(body.fault(message, completion(reaction), subject=label))
+        context.faults.append(body.fault("nothing changes in this reaction", "the same species stand on both sides"))
     elif reaction.unchecked:
-        names = ", ".join(species.text for species in reaction.unchecked)
-        context.faults.append(
-            body.fault(f"balance not checked: the formula of {names} is not known", notice=True, subject=label)
-        )
+        names = ", ".join(dict.fromkeys(species.name for species in reaction.unchecked))
+        context.faults.append(body.fault(f"balance not checked: the formula of {names} is not known", notice=True))
+    elif reaction.imbalance:
+        hint = context.guesses.search(lambda: completion(reaction)) or _misspelt(reaction, context)
+        context.faults.append(body.fault(f"does not balance: {imbalance_text(reaction)}", hint))
 
 
-def _checked_heat(
-    heat: Heat, reaction: Reaction, kind: str, place: Piece, label: str, context: Context
-) -> Heat | None:
-    if heat.amount is None:
-        return heat
-    try:
-        heat.factor(reaction)
-    except ValueError as problem:
-        choices = ", ".join(species.text for species in reaction.net)
-        context.faults.append(place.fault(str(problem), f"one of {choices}", subject=label))
-        return None
-    expected = {"combustion": -1, "vaporisation": 1, "fusion": 1, "sublimation": 1}.get(kind)
-    if expected is not None and heat.amount.value * expected < 0:
-        usual = "exothermic, negative" if expected < 0 else "endothermic, positive"
-        context.faults.append(
-            place.fault(f"is the sign right? {kind} is {usual} dH", notice=True, subject=label)
-        )
-    return heat
+def _misspelt(reaction: Reaction, context: Context) -> str:
+    """A formula that looks like a declared name may be that name, mistyped."""
+    for species in reaction.species:
+        if not species.declared:
+            near = context.guesses.nearest(species.name, context.reader.declared)
+            if near:
+                return f"did you mean {near} instead of {species.name}?"
+    return "every element and the charge must balance"
+
+
+def missing_phases(read: ReadRow) -> Iterator[tuple[Species, Piece | None]]:
+    """Species of a row that have no phase, with the places where they were read."""
+    return ((species, read.places.get(species)) for species in read.row.reaction.species if not species.phase)
 
 
 # keys ---------------------------------------------------------------------------------------------------------------
@@ -226,173 +171,61 @@ def read_keys(pieces: list[Piece], context: Context, where: Where) -> Keyed:
     """Every key of an entry; unknown keys, keys typed twice and bad values are collected as faults."""
     keyed = Keyed()
     for piece in pieces:
-        word = re.match(r"[^\s=]+", piece.text)
-        assert word is not None
-        key = find_key(word[0])
-        if key is None:
-            near = nearest(word[0], spellings(where))
-            hint = f"did you mean {near}?" if near else f"known here: {', '.join(spellings(where))}"
-            context.faults.append(piece.fault(f"unknown key {word[0][:40]}", hint, 0, word.end()))
-            continue
-        if where not in key.where:
-            places = " or ".join({"species": "a species", "known": "a known row", "step": "a step"}[w]
-                                 for w in ("species", "known", "step") if w in key.where)  # fmt: skip
-            context.faults.append(piece.fault(f"{key.name} belongs to {places}, not here", "", 0, word.end()))
-            continue
-        value = piece.part(word.end()).strip()
-        if value.text.startswith("="):
-            value = value.part(1).strip()
-        _take(key, piece, value, keyed, context)
+        try:
+            _read_key(piece, keyed, context, where)
+        except Trouble as trouble:
+            context.faults.append(trouble.fault)
     return keyed
 
 
-def _take(key: Key, piece: Piece, value: Piece, keyed: Keyed, context: Context) -> None:
+def _read_key(piece: Piece, keyed: Keyed, context: Context, where: Where) -> None:
+    end = next((index for index, char in enumerate(piece.text) if char in " =:"), len(piece.text))
+    word = piece.text[:end]
+    key = find_key(word)
+    if key is None:
+        _refuse_key(piece, word, context, where)
+    if where not in key.where:
+        places = " or ".join(_KIND_OF_ENTRY[kind] for kind in _KIND_OF_ENTRY if kind in key.where)
+        hint = "a heat takes its own temperature, like dH 44 kJ/mol at 25 degC" if key.name == "T" else "leave it out"
+        piece.refuse(f"{key.name} belongs to {places}, not to {_KIND_OF_ENTRY[where]}", hint, 0, end)
+    value = piece.part(end).strip()
+    if value.text[:1] in ("=", ":"):
+        value = value.part(1).strip()
     if key.name in keyed.values:
-        context.faults.append(piece.fault(f"{key.name} is typed twice for this entry", "keep one"))
-        return
+        piece.refuse(f"{key.name} is typed twice for this entry", "keep one")
+    _take(key, read_value(key, value, context), piece, keyed)
     if not key.feeds:
         context.unused.setdefault(key.name, piece)
-    try:
-        read = _VALUES[key.value](key, value, context)
-    except Trouble as trouble:
-        context.faults.append(trouble.fault)
-        return
+
+
+def _refuse_key(piece: Piece, word: str, context: Context, where: Where) -> NoReturn:
+    if not word or word[0] in "-+→⟶⇌<":
+        piece.refuse("this belongs to no key", "an equation stands on one line", 0, 1)
+    near = context.guesses.search(lambda: nearest_key(word, where))
+    hint = f"did you mean {near}?" if near else f"known here: {', '.join(names_in(where))}"
+    piece.refuse(f"unknown key {word[:40]}", hint, 0, len(word))
+
+
+def _take(key: Key, read: object, piece: Piece, keyed: Keyed) -> None:
     if key.value == "equivalents":
-        keyed.equivalents.append(cast("tuple[Species, Fraction]", read))
+        species, number = cast("tuple[Species, Fraction]", read)
+        if any(species == other for other, _ in keyed.equivalents):
+            piece.refuse(f"equivalents of {species} are typed twice", "keep one")
+        keyed.equivalents.append((species, number))
     elif key.value == "recycle":
         keyed.recycles.append(cast(Recycle, read))
     else:
+        operations = (*OPERATIONS, "equilibrium")
+        other = next((name for name in operations if name in keyed.values), None)
+        if key.name in operations and other is not None:
+            piece.refuse(f"a step is either {other} or {key.name}", "keep one")
         keyed.values[key.name] = read
     keyed.places[key.name] = piece
 
 
-def _measured(key: Key, value: Piece, context: Context) -> Measured:
-    quantity = read_quantity(value, context.sheet_k)
-    if quantity.basis is not None or quantity.temperature is not None:
-        value.refuse(f"{key.name} takes a number with a unit only", f"like {key.example}")
-    if quantity.assumed_k and context.assumed is None:
-        context.assumed = value
-    return require_dimension(quantity, key.unit, f"like {key.example}")
-
-
-def _heat(key: Key, value: Piece, context: Context) -> Heat:
-    letter = re.match(r"([A-Za-z][A-Za-z0-9_]{0,11})(?=$|\s+at\s)", value.text)
-    if letter is not None:
-        at = re.match(r"\s+at\s+", value.text[letter.end() :])
-        tail = value.part(letter.end() + at.end()) if at else None
-        return Heat(None, None, letter[1], None if tail is None else _temperature(tail, context))
-    quantity = read_quantity(value, context.sheet_k)
-    if quantity.assumed_k and context.assumed is None:
-        context.assumed = value
-    dimension = quantity.measured.unit.dimension
-    if dimension == KJ_PER_KG.dimension and quantity.basis is None:
-        quantity.unit_piece.refuse("a heat per mass of what?", f"like {quantity.measured.unit.text} of NB")
-    if dimension == KJ.dimension and quantity.basis is not None:
-        quantity.unit_piece.refuse("a bare energy is per mole of reaction as written", "like kJ/mol of NB")
-    if dimension not in (KJ.dimension, KJ_PER_KG.dimension):
-        require_dimension(quantity, KJ_PER_MOL, f"like {key.example}")
-    basis = None if quantity.basis is None else context.reader.species(quantity.basis)
-    at = None if quantity.temperature is None else _temperature(quantity.temperature, context)
-    return Heat(quantity.measured, basis, "", at)
-
-
-def _temperature(piece: Piece, context: Context) -> Measured:
-    return require_dimension(read_quantity(piece, context.sheet_k), CELSIUS, "like 25 degC, or 298.15 K")
-
-
-def _text(key: Key, value: Piece, _context: Context) -> str:
-    if not value.text:
-        value.refuse(f"a value is missing behind {key.name}", f"like {key.example}")
-    if key.name == "shared" or not value.text.startswith('"'):
-        text = value.text
-        if '"' in text and key.name != "shared":
-            value.refuse("a quotation mark inside a text", 'put the whole text in "…"')
-    else:
-        end = value.text.find('"', 1)
-        if end < 0:
-            value.refuse("this quotation is not closed", 'put " at its end')
-        if value.text[end + 1 :].strip():
-            value.refuse("this stands behind the quotation", "keys are separated by |", end + 1)
-        text = value.text[1:end]
-    if len(text) > LONGEST_QUOTE:
-        value.refuse(f"a text of more than {LONGEST_QUOTE} characters")
-    if key.name == "cas":
-        _check_cas(value, text)
-    return text
-
-
-def _check_cas(value: Piece, text: str) -> None:
-    match = re.fullmatch(r"([0-9]{2,7})-([0-9]{2})-([0-9])", text)
-    if match is None:
-        value.refuse("this is no CAS Registry Number", "like 62-53-3")
-    digits = (match[1] + match[2])[::-1]
-    if sum(place * int(digit) for place, digit in enumerate(digits, 1)) % 10 != int(match[3]):
-        value.refuse("the check digit of this CAS Registry Number is wrong", "a digit was mistyped")
-
-
-def _flag(key: Key, value: Piece, _context: Context) -> bool:
-    if value.text:
-        value.refuse(f"{key.name} takes no value", "separate keys by |")
-    return True
-
-
-def _species(key: Key, value: Piece, context: Context) -> Species:
-    if not value.text:
-        value.refuse(f"a species is missing behind {key.name}", f"like {key.example}")
-    return context.reader.species(value)
-
-
-def _equivalents(key: Key, value: Piece, context: Context) -> tuple[Species, Fraction]:
-    match = re.fullmatch(r"(\S+)\s+of\s+(.+)", value.text)
-    if match is None:
-        value.refuse("equivalents of what?", f"like {key.example}")
-    number = read_quantity(value.part(0, match.end(1)), context.sheet_k).measured
-    if number.unit != PURE or number.spread is not None:
-        value.refuse("equivalents are a plain number", f"like {key.example}", 0, match.end(1))
-    return context.reader.species(value.part(match.start(2))), number.value
-
-
-def _recycle(key: Key, value: Piece, context: Context) -> Recycle:
-    match = re.fullmatch(r"(.+?)\s+from\s+(\S+)\s+(.+)", value.text)
-    if match is None:
-        value.refuse("recycle what, from where, how much?", f"like {key.example}")
-    part = require_dimension(
-        read_quantity(value.part(match.start(3)), context.sheet_k), PURE, f"like {key.example}"
-    )
-    return Recycle(context.reader.species(value.part(0, match.end(1))), match[2], part)
-
-
-def _side(key: Key, value: Piece, _context: Context) -> str:
-    match = re.fullmatch(r"of\s+(\S+)", value.text)
-    if match is None:
-        value.refuse("a side row of which step?", f"like {key.example}")
-    return match[1].strip("[]")
-
-
-def _loss(key: Key, value: Piece, _context: Context) -> str:
-    if value.text not in ("reacted", "unreacted"):
-        value.refuse("what is lost has either reacted or not", "loss reacted, or loss unreacted")
-    return value.text
-
-
-_VALUES: dict[str, Callable[[Key, Piece, Context], object]] = {
-    "heat": _heat,
-    "measured": _measured,
-    "text": _text,
-    "flag": _flag,
-    "species": _species,
-    "equivalents": _equivalents,
-    "recycle": _recycle,
-    "label": _side,
-    "loss": _loss,
-}
-
-
 def as_step(row: Row, keyed: Keyed) -> Step:
     """The row as a step of a route, with what its keys say."""
-    operation = next(
-        (name for name in ("crystallisation", "dissolution", "distillation", "equilibrium") if name in keyed.values), ""
-    )
+    operation = next((name for name in (*OPERATIONS, "equilibrium") if name in keyed.values), "")
     return Step(
         row,
         keyed.species("product"),
@@ -408,8 +241,3 @@ def as_step(row: Row, keyed: Keyed) -> Step:
         keyed.measured("conc"),
         keyed.measured("cp"),
     )
-
-
-def missing_phases(reaction: Reaction) -> Iterator[Species]:
-    """Species of a reaction that have no phase."""
-    return (species for species in reaction.species if not species.phase)

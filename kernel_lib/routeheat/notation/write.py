@@ -2,23 +2,30 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator
+from itertools import groupby
+from textwrap import fill
 
 from routeheat.chem.measured import Measured, decimal_text
 from routeheat.chem.route import Declaration, Route, Sheet
 from routeheat.chem.row import Row
 from routeheat.chem.species import Species
 from routeheat.chem.step import Step
+from routeheat.notation.pasted import plain_line
+from routeheat.notation.values import LONGEST_QUOTE
+
+_WIDTH = 100
+"""Columns after which the next key starts a line of its own."""
 
 
-def write(sheet: Sheet) -> str:
+def write_sheet(sheet: Sheet) -> str:
     """The sheet as typed text: one blank line between sections, one key order, two spaces of indentation."""
     blocks: list[list[str]] = []
     if sheet.coverage is not None:
         blocks.append([f"uncertainty k = {decimal_text(sheet.coverage)}"])
     if sheet.species:
         width = max(len(name) for name in sheet.species)
-        blocks.append(["species", *(f"  {_declaration(item, width)}" for item in sheet.species.values())])
+        blocks.append(["species", *(line for item in sheet.species.values() for line in _declaration(item, width))])
     if sheet.known:
         blocks.append(["known", *(line for row in sheet.known.values() for line in _row(row, _row_keys(row)))])
     for target in sheet.targets.values():
@@ -28,33 +35,50 @@ def write(sheet: Sheet) -> str:
     return "\n\n".join("\n".join(block) for block in blocks) + "\n"
 
 
-def _declaration(item: Declaration, width: int) -> str:
+def _declaration(item: Declaration, width: int) -> Iterator[str]:
     species = item.species
     formula = "?" if species.formula is None else species.formula.text
     keys = []
     if item.title:
-        keys.append(f'name "{item.title}"')
+        keys.append(f"name {_quoted(item.title)}")
     if item.cas:
         keys.append(f"cas {item.cas}")
     keys.extend(_setting(name, value) for name, value in item.settings)
-    line = f"{species.name:<{width}}  {formula}{species.state}"
-    return f"{line} | {' | '.join(keys)}" if keys else line
+    line = f"  {species.name:<{width}}  {formula}{species.state}"
+    yield from _wrapped(line, keys, " " * 6)
 
 
 def _route(route: Route) -> Iterator[str]:
     title = f' "{route.title}"' if route.title else ""
     yield f"route {route.name}{title} makes {route.makes.text}"
-    for step in route.steps:
-        if step.label in route.used:
-            yield f"  use {step.label}"
+    used = set(route.used)
+    for is_used, steps in groupby(route.steps, lambda step: step.label in used):
+        if is_used:
+            yield from fill(
+                ", ".join(step.label for step in steps), _WIDTH, initial_indent="  use ", subsequent_indent="  use ",
+                break_long_words=False, break_on_hyphens=False,
+            ).splitlines()  # fmt: skip
         else:
-            yield from _row(step.row, [*_row_keys(step.row), *_step_keys(step)])
+            for step in steps:
+                yield from _row(step.row, _row_keys(step.row, _step_keys(step)))
 
 
 def _row(row: Row, keys: list[str]) -> Iterator[str]:
     yield f"  [{row.label}] {_equation(row)}"
     if keys:
-        yield f"       {' | '.join(keys)}"
+        indent = " " * 7
+        yield from _wrapped(indent + keys[0], keys[1:], indent)
+
+
+def _wrapped(line: str, keys: list[str], indent: str) -> Iterator[str]:
+    """``line`` with the keys behind it, as many on a line as fit."""
+    for key in keys:
+        if len(line) + len(" | ") + len(key) > _WIDTH:
+            yield line
+            line = indent + key
+        else:
+            line = f"{line} | {key}"
+    yield line
 
 
 def _equation(row: Row) -> str:
@@ -66,10 +90,12 @@ def _equation(row: Row) -> str:
     return text
 
 
-def _row_keys(row: Row) -> list[str]:
+def _row_keys(row: Row, of_step: Iterable[str] = ()) -> list[str]:
+    """The heat first, then what belongs to a step, then where it comes from and what is kept."""
     keys = [] if row.heat is None else [f"dH {row.heat.text}"]
+    keys.extend(of_step)
     if row.source:
-        keys.append(f'source "{row.source}"')
+        keys.append(f"source {_quoted(row.source)}")
     keys.extend(_setting(name, value) for name, value in row.settings)
     return keys
 
@@ -99,4 +125,10 @@ def _setting(name: str, value: object) -> str:
         return name
     if isinstance(value, Measured):
         return f"{name} {value.text}"
-    return f"{name} {value}" if name in ("shared",) else f'{name} "{value}"'
+    return f"{name} {value}" if name == "shared" else f"{name} {_quoted(str(value))}"
+
+
+def _quoted(text: str) -> str:
+    """A text in quotes, without what no sheet can hold: quotation marks, line ends, control characters."""
+    line = plain_line(" ".join(text.splitlines())).text if not text.isprintable() else text
+    return '"' + line.replace('"', "'")[:LONGEST_QUOTE] + '"'

@@ -2,7 +2,10 @@
 
 from __future__ import annotations
 
+from typing import Any
+
 from routeheat.present import html
+from routeheat.present.frame import frame
 from routeheat.present.table import Table
 from routeheat.present.text import render_table
 
@@ -19,6 +22,11 @@ class Shown:
     def table(self) -> Table:
         """The table a reader looks at first."""
         raise TypeError(f"{type(self).__name__} has no table")
+
+    def to_frame(self, index: int = 0) -> Any:
+        """One of :meth:`tables`, by default the first, as a ``pandas.DataFrame``: see
+        :func:`routeheat.present.frame.frame`. Raises ``ModuleNotFoundError`` when pandas is not installed."""
+        return frame(self.tables()[index])
 
     @property
     def text(self) -> str:

@@ -9,6 +9,7 @@ from typing import Any
 
 from routeheat.chem.heat import HeatSum
 from routeheat.chem.route import Route
+from routeheat.chem.row import Rows
 from routeheat.errors import RouteError
 from routeheat.present.ladder import Ladder
 from routeheat.present.numbers import reading
@@ -88,10 +89,12 @@ class Comparison(Shown):
         return compare_views.to_dict(self)
 
 
-def compare_routes(routes: Mapping[str, Route] | Iterable[Route], *, per: Any = "mol") -> Comparison:
+def compare_routes(
+    routes: Mapping[str, Route] | Iterable[Route], *, per: Any = "mol", known: Rows | None = None
+) -> Comparison:
     """Profiles of ``routes`` on one basis, their differences, and whether their data agree.
 
-    Raises :class:`~routeheat.errors.RouteError` when there is no route, two have one name, they do not all make the
+    ``per`` and ``known`` as in :func:`~routeheat.process.profile.profile`. Raises :class:`~routeheat.errors.RouteError` when there is no route, two have one name, they do not all make the
     same species, or one of them cannot be run as typed.
     """
     listed = list(routes.values()) if isinstance(routes, Mapping) else list(routes)
@@ -107,7 +110,7 @@ def compare_routes(routes: Mapping[str, Route] | Iterable[Route], *, per: Any = 
                 f"route {names[0]} makes {listed[0].makes}, route {route.name} makes {route.makes}", route.name,
                 hint="only routes to the same species in the same phase can be compared",
             )
-    profiles = tuple(profile(route, per=per) for route in listed)
+    profiles = tuple(profile(route, per=per, known=known) for route in listed)
     pairs = list(combinations(profiles, 2))
     return Comparison(
         profiles,

@@ -19,7 +19,7 @@ from routeheat.chem.reaction import Reaction, add_net
 from routeheat.chem.route import Route
 from routeheat.chem.step import Recycle, Step
 from routeheat.errors import RouteError
-from routeheat.hess.exact import Span
+from routeheat.chem.exact import Span
 from routeheat.process.linking import read_links
 from routeheat.process.links import Links, charge, share, side_amount
 from routeheat.units import PURE

@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from fractions import Fraction
 from typing import Any
 
 from routeheat.chem.heat import HeatSum
 from routeheat.chem.route import Route
+from routeheat.chem.row import Rows
 from routeheat.chem.species import Species
 from routeheat.chem.step import Step
 from routeheat.errors import RouteError
@@ -168,13 +169,16 @@ class Profile(Shown):
         return profile_views.to_dict(self)
 
 
-def profile(route: Route, *, per: Any = "mol") -> Profile:
+def profile(route: Route, *, per: Any = "mol", known: Rows | None = None) -> Profile:
     """The heat of every step of ``route`` per mole of product, per kilogram, or per batch, after all yields.
 
     ``per`` is ``mol``, ``kg``, a batch such as ``12 kg`` or ``3 mol``, or a pint quantity; it counts the species the
-    route makes. Raises :class:`~routeheat.errors.RouteError` when the route cannot be run as typed and
+    route makes. ``known`` takes the place of the sheet's known rows, from which heats that are not typed are derived
+    (reconciled rows, say). Raises :class:`~routeheat.errors.RouteError` when the route cannot be run as typed and
     :class:`~routeheat.errors.UnitError` for an unusable basis.
     """
+    if known is not None:
+        route = replace(route, known=known)
     basis = read_basis(per, route.makes)
     found = extents(route)
     items: list[StepHeat] = []

@@ -6,7 +6,7 @@ from itertools import combinations
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from routeheat.hess.exact import Span, solve
+from routeheat.chem.exact import Span, solve
 from routeheat.hess.shortest import alternatives, short_cycles, shortest
 
 NUMBERS = st.sampled_from([Fraction(-2), Fraction(-1), Fraction(1), Fraction(2), Fraction(1, 2)])
@@ -114,3 +114,13 @@ def test_nothing_gives_the_empty_target():
 def test_an_unreachable_target_has_none():
     assert shortest({"K1": {"a": 1}}, {"b": 1}) is None
     assert alternatives({"K1": {"a": 1}}, {"b": 1}, 5) == ()
+
+
+@settings(deadline=None)
+@given(networks())
+def test_out_of_budget_it_still_offers_another_way_where_there_is_one(network):
+    rows, target = network
+    expected = brute_force(rows, target)
+    found = alternatives(rows, target, 2, budget=0)
+    assert len(found) == min(len(expected), 2)
+    assert all(item.coefficients in expected for item in found)

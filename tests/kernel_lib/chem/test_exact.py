@@ -5,7 +5,7 @@ from fractions import Fraction
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from routeheat.hess.exact import Span, presolve, primitive, solve
+from routeheat.chem.exact import Span, presolve, primitive, solve
 
 NUMBERS = st.sampled_from([Fraction(n, d) for n in (-3, -2, -1, 1, 2, 3) for d in (1, 2, 3)])
 VECTORS = st.dictionaries(st.integers(0, 5), NUMBERS, max_size=4)

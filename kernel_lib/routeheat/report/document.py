@@ -1,0 +1,201 @@
+"""The report as plain shapes, built once and rendered as HTML, DOCX and PDF.
+
+Nothing here knows a file format. Texts are harmless when they leave :func:`grid` and :func:`line`: control and
+bidirectional characters are written out, and what would burst a cell or a heading is shortened in its middle (the
+typed sheet in the appendix keeps the whole).
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator
+from dataclasses import dataclass, replace
+from typing import Literal
+
+from routeheat.draw.arrange import Drawing
+from routeheat.present.markup import Rich, Run, plain
+from routeheat.present.table import Table
+from routeheat.present.text import cell_text, column_header, shared_coverage, visible_rich
+
+LONGEST_CELL = 300
+"""Characters from which on a cell, or the title of the report, is shortened."""
+LONGEST_HEADING = 160
+"""Characters from which on a caption or a heading is shortened."""
+
+
+@dataclass(frozen=True, slots=True)
+class Heading:
+    """A heading below that of its section."""
+
+    id: str
+    text: Rich
+    level: int = 3
+
+
+@dataclass(frozen=True, slots=True)
+class Paragraph:
+    """Running text."""
+
+    text: Rich
+    kind: Literal["text", "note", "caution"] = "text"
+
+
+@dataclass(frozen=True, slots=True)
+class Bullets:
+    """A list of sentences."""
+
+    items: tuple[Rich, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Grid:
+    """Header and cells of a table as they are written; the first column names the rows."""
+
+    header: tuple[Rich, ...]
+    rows: tuple[tuple[Rich, ...], ...]
+    right: tuple[bool, ...]
+    """Which columns are flush right."""
+    strong: frozenset[int] = frozenset()
+    """Indices of rows that are totals."""
+
+    def columns(self, kept: Iterable[int]) -> Grid:
+        """The grid with the columns of those indices."""
+        indices = tuple(kept)
+        rows = tuple(tuple(row[index] for index in indices) for row in self.rows)
+        return Grid(
+            tuple(self.header[index] for index in indices), rows, tuple(self.right[index] for index in indices),
+            self.strong,
+        )  # fmt: skip
+
+
+@dataclass(frozen=True, slots=True)
+class TableBlock:
+    """A numbered table with a caption above and notes below."""
+
+    id: str
+    caption: Rich
+    grid: Grid
+    notes: tuple[Rich, ...] = ()
+    number: int = 0
+
+
+@dataclass(frozen=True, slots=True)
+class FigureBlock:
+    """A numbered diagram with a caption below."""
+
+    id: str
+    caption: Rich
+    drawing: Drawing
+    """Without title and notes, which the page gives."""
+    notes: tuple[Rich, ...] = ()
+    number: int = 0
+
+
+@dataclass(frozen=True, slots=True)
+class Code:
+    """Typed text, line by line."""
+
+    id: str
+    caption: Rich
+    lines: tuple[str, ...]
+
+
+Block = Heading | Paragraph | Bullets | TableBlock | FigureBlock | Code
+
+
+@dataclass(frozen=True, slots=True)
+class Section:
+    """A part of the report that can be left out by its name."""
+
+    name: str
+    heading: str
+    blocks: tuple[Block, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Document:
+    """A whole report."""
+
+    title: Rich
+    date: Rich
+    """Empty when no date is given."""
+    caution: Rich
+    """The short caution, which every report shows first."""
+    sections: tuple[Section, ...]
+
+
+def line(text: Rich | str, most: int = 0) -> Rich:
+    """A harmless text; longer than ``most`` characters (if not 0) it is shortened in its middle."""
+    rich = visible_rich(text)
+    length = sum(len(run.text) for run in rich)
+    if not most or length <= most:
+        return rich
+    half = (most - 1) // 2
+    letters = [Run(letter, run.style) for run in rich for letter in run.text]
+    kept = [*letters[:half], Run("…"), *letters[length - half :]]
+    merged: list[Run] = []
+    for run in kept:
+        if merged and merged[-1].style == run.style:
+            merged[-1] = Run(merged[-1].text + run.text, run.style)
+        else:
+            merged.append(run)
+    return tuple(merged)
+
+
+def lines(text: str) -> tuple[str, ...]:
+    """The lines of a typed text, each harmless."""
+    return tuple(plain(visible_rich(part.expandtabs(4))) for part in text.rstrip("\n").split("\n"))
+
+
+def grid(table: Table) -> Grid:
+    """A table as written: headers with units and the k of their ±, cells as texts."""
+    says_k = [shared_coverage(table, index) is None for index in range(len(table.columns))]
+    header = tuple(_unbroken(line(column_header(table, index), LONGEST_HEADING)) for index in range(len(table.columns)))
+    rows = tuple(
+        tuple(
+            line(cell if isinstance(cell, tuple) else cell_text(cell, column, say_k=says_k[index]), LONGEST_CELL)
+            for index, (cell, column) in enumerate(zip(row, table.columns, strict=True))
+        )
+        for row in table.rows
+    )
+    return Grid(header, rows, tuple(column.align == "right" for column in table.columns), table.strong)
+
+
+def _unbroken(header: Rich) -> Rich:
+    """A header in which no line ends between a slash and its unit, or within a coverage factor."""
+    return tuple(
+        Run(run.text.replace(" / ", " /\xa0").replace("± k = ", "±\xa0k\xa0=\xa0"), run.style) for run in header
+    )
+
+
+def table_block(name: str, table: Table, *extra: str, caption: Rich | str = "") -> TableBlock:
+    """A table with its notes, and ``extra`` ones behind them; its title is the caption unless one is given."""
+    notes = tuple(line(note) for note in (*table.notes, *extra))
+    return TableBlock(name, line(caption or table.title, LONGEST_HEADING), grid(table), notes)
+
+
+def figure_block(name: str, drawing: Drawing, *extra: str) -> FigureBlock:
+    """A figure whose title is the caption and whose notes stand below it."""
+    notes = tuple(line(note) for note in dict.fromkeys((*drawing.notes, *extra)))
+    bare = replace(drawing, title="", notes=(), alt=drawing.alt or plain(drawing.title))
+    return FigureBlock(name, line(drawing.title, LONGEST_HEADING), bare, notes)
+
+
+def numbered(sections: Iterable[Section]) -> tuple[Section, ...]:
+    """The sections with their tables and figures numbered through the report."""
+    counts = {TableBlock: 0, FigureBlock: 0}
+
+    def count(blocks: Iterable[Block]) -> Iterator[Block]:
+        for block in blocks:
+            if isinstance(block, TableBlock | FigureBlock):
+                counts[type(block)] += 1
+                yield replace(block, number=counts[type(block)])
+            else:
+                yield block
+
+    return tuple(replace(section, blocks=tuple(count(section.blocks))) for section in sections)
+
+
+def blocks_of(document: Document) -> Iterator[Block]:
+    """Every block of every section in order."""
+    for section in document.sections:
+        yield from section.blocks

@@ -1,0 +1,137 @@
+"""From a model and a choice of view to what the page shows: one pure function, JSON-safe, everything escaped."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, replace
+from pathlib import Path
+from typing import Any
+
+from routeheat.draw import as_ladder, svg
+from routeheat.errors import Fault, RouteheatError, UnknownName
+from routeheat.present.html import render_table, stylesheet
+from routeheat.present.ladder import Ladder
+from routeheat.present.table import Table
+from routeheat.present.text import visible
+from routeheat_widgets import _twin
+from routeheat_widgets._model import TEXT_LIMIT, DeskModel
+from routeheat_widgets._view import Picture, View
+from routeheat_widgets.heat import HeatView
+from routeheat_widgets.routes import Routes
+from routeheat_widgets.steps import Steps
+from routeheat_widgets.typed import TypedView
+
+VIEWS: dict[str, View] = {view.key: view for view in (Routes(), Steps(), HeatView(), TypedView())}
+_MOST_FAULTS = 100
+
+
+@dataclass(frozen=True, slots=True)
+class Shown:
+    """A view as computed: the picture for code and figures, the content for the page."""
+
+    picture: Picture | None
+    """``None`` when it could not be computed."""
+    content: dict[str, Any]
+
+
+def view_named(key: str) -> View:
+    """The view with that key; raises :class:`~routeheat.errors.UnknownName`."""
+    if key not in VIEWS:
+        raise UnknownName("view", key, VIEWS)
+    return VIEWS[key]
+
+
+def sheet_content(model: DeskModel) -> dict[str, Any]:
+    """What the page shows of the text: the text itself, its faults and notices, the line of every label."""
+    shown = model.faults[:_MOST_FAULTS]
+    more = len(model.faults) - len(shown)
+    editable = len(model.text) <= TEXT_LIMIT
+    return {
+        "revision": model.revision,
+        "text": model.text if editable else "",
+        "editable": editable,
+        "faults": [_fault(fault) for fault in shown],
+        "more_faults": f"and {more} more" if more else "",
+        "notices": [_fault(fault) for fault in model.notices[:_MOST_FAULTS]],
+        "lines": _lines(model),
+    }
+
+
+def view_content(
+    model: DeskModel,
+    view: View,
+    options: Mapping[str, str],
+    width: float | None,
+    path: Path | None,
+    last: Mapping[str, Any] | None = None,
+) -> Shown:
+    """What the page shows of the view; ``last`` is its last good content, which stays when nothing can be computed."""
+    controls = view.controls(model, options)
+    chosen = {control.key: control.value for control in controls}
+    base: dict[str, Any] = {
+        "view": view.key,
+        "question": view.question,
+        "controls": [
+            {"key": c.key, "label": c.label, "value": c.value, "choices": [list(choice) for choice in c.choices]}
+            for c in controls
+        ],
+    }
+    try:
+        picture = view.render(model, chosen)
+        content = _drawn(model, picture, width, path)
+    except RouteheatError as problem:
+        lines = str(problem).splitlines()
+        if last is None:
+            return Shown(None, {**base, **_EMPTY, "problem": lines})
+        kept = ["The picture is the last one that could be computed."]
+        return Shown(None, {**base, **{key: last[key] for key in _EMPTY}, "problem": lines, "kept": kept, "code": ""})
+    return Shown(picture, {**base, **_EMPTY, **content})
+
+
+_EMPTY: dict[str, Any] = {"svg": "", "tables": "", "empty": "", "problem": [], "kept": [], "left_out": [], "code": "",
+                          "details": {}}
+
+
+def _drawn(model: DeskModel, picture: Picture, width: float | None, path: Path | None) -> dict[str, Any]:
+    ladder = None if picture.drawn is None else as_ladder(picture.drawn)
+    kept = list(model.kept) if model.kept_names & picture.uses else []
+    return {
+        "svg": "" if ladder is None else svg(ladder, width=width),
+        "tables": "".join(_table(table, ladder) for table in picture.tables),
+        "empty": picture.empty,
+        "kept": kept,
+        "left_out": list(model.left_out),
+        "code": _twin.code(model, picture, path),
+        "details": {
+            f"{visible(column)}\n{visible(label)}": [[visible(head), visible(text)] for head, text in details]
+            for (column, label), details in picture.details.items()
+            if details
+        },
+    }
+
+
+def _table(table: Table, ladder: Ladder | None) -> str:
+    """The table without the notes that the diagram already shows; the page carries the stylesheet once."""
+    said = set() if ladder is None else set(ladder.notes)
+    shorter = replace(table, notes=tuple(note for note in table.notes if note not in said))
+    return render_table(shorter).replace(f"<style>{stylesheet()}</style>", "", 1)
+
+
+def _fault(fault: Fault) -> dict[str, Any]:
+    return {
+        "line": fault.line,
+        "column": fault.column,
+        "length": fault.length,
+        "message": visible(fault.message),
+        "hint": visible(fault.hint),
+    }
+
+
+def _lines(model: DeskModel) -> dict[str, int]:
+    """Line of every row, step and declared species by label, for going from a picture to the text."""
+    sheet = model.sheet
+    found = {visible(name): item.line for name, item in sheet.species.items()}
+    found |= {visible(route.heading): route.line for route in sheet.routes.values()}
+    rows = [*sheet.known.values(), *sheet.targets.values()]
+    rows += [step.row for route in sheet.routes.values() for step in route.steps]
+    return found | {visible(row.label): row.line for row in rows}
