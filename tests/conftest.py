@@ -2,11 +2,12 @@
 
 from __future__ import annotations
 
-import os
-
 import pytest
+from hypothesis import settings
 
-os.environ.setdefault("PYTHONHASHSEED", "0")
+# machines are noisy, so no deadlines; the same examples every time, so that a failure can be repeated
+settings.register_profile("routeheat", deadline=None, derandomize=True)
+settings.load_profile("routeheat")
 
 
 def pytest_addoption(parser: pytest.Parser) -> None:

@@ -2,6 +2,8 @@
 from .chem.route import Route as Route
 from .chem.route import Sheet as Sheet
 from .draw import draw as draw
+from .draw import paper as paper
+from .draw import paper_bytes as paper_bytes
 from .draw import svg as svg
 from .errors import Fault as Fault
 from .errors import FormulaError as FormulaError
@@ -26,6 +28,8 @@ from .known.lookup import known_row as known_row
 from .notation.code import read_reaction as read_reaction
 from .notation.code import row as row
 from .notation.write import write_sheet as write_sheet
+from .process.at_scale import AtScale as AtScale
+from .process.at_scale import compare_at_scale as compare_at_scale
 from .process.checklist import Checklist as Checklist
 from .process.checklist import checklist as checklist
 from .process.compare import Comparison as Comparison
@@ -54,6 +58,8 @@ from .report.markdown import markdown as markdown
 from .report.spreadsheet import read_known_heats as read_known_heats
 from .report.spreadsheet import write_known_heats as write_known_heats
 from .report.tables import csv_text as csv_text
+from .report.write import report_bytes as report_bytes
+from .report.write import write_report as write_report
 from .report.workbook import write_workbook as write_workbook
 from .rerun.reference import Reference as Reference
 from .rerun.reference import reference as reference

@@ -39,8 +39,14 @@ class Lab:
         """A notebook with code cells; returns its name."""
         content = {
             "cells": [
-                {"cell_type": "code", "execution_count": None, "id": f"cell{number}", "metadata": {}, "outputs": [],
-                 "source": source}
+                {
+                    "cell_type": "code",
+                    "execution_count": None,
+                    "id": f"cell{number}",
+                    "metadata": {},
+                    "outputs": [],
+                    "source": source,
+                }
                 for number, source in enumerate(cells)
             ],
             "metadata": {"kernelspec": {"display_name": "Python 3", "language": "python", "name": "python3"}},
@@ -125,8 +131,10 @@ class Sight:
                 route.abort()
 
         self.page.route("**/*", route)
-        self.page.on("console", lambda m: self.complaints.append(f"{m.text} ({m.location.get('url', '')})")
-                     if m.type == "error" else None)
+        self.page.on(
+            "console",
+            lambda m: self.complaints.append(f"{m.text} ({m.location.get('url', '')})") if m.type == "error" else None,
+        )
         self.page.on("pageerror", lambda problem: self.complaints.append(str(problem)))
 
     def open(self, name: str) -> None:
@@ -158,8 +166,9 @@ class Sight:
 
     def ask(self, code: str) -> str:
         """What the kernel prints for ``code``, outside every cell."""
-        return str(self.page.evaluate(
-            """async (code) => {
+        return str(
+            self.page.evaluate(
+                """async (code) => {
                 const future = panel.sessionContext.session.kernel.requestExecute({code, store_history: false});
                 let text = '';
                 future.onIOPub = (m) => {
@@ -169,5 +178,6 @@ class Sight:
                 await future.done;
                 return text.trim();
             }""",
-            code,
-        ))
+                code,
+            )
+        )

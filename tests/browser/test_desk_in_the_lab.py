@@ -11,7 +11,7 @@ import pytest
 
 pytestmark = pytest.mark.browser
 
-SHEET = '''uncertainty k = 2
+SHEET = """uncertainty k = 2
 
 species
   SUB  C7H8O(l)    name "starting alcohol"
@@ -34,7 +34,7 @@ route B "over the aldehyde" makes ACD
        dH -180 ± 12 kJ/mol | yield 90 %
   [B2] OXI + 1/2 O2(g) -> ACD
        dH -295 ± 15 kJ/mol | yield 92 %
-'''
+"""
 LINE_OF_A1 = 16
 
 
@@ -59,13 +59,8 @@ def desk(sight: Any, request: pytest.FixtureRequest) -> Callable[..., Any]:
 
 
 def settled(sight: Any) -> None:
-    """Wait until the width of the pane has reached the kernel and come back as a picture."""
-    sight.page.wait_for_function(
-        """() => [...document.querySelectorAll('.rhd')].every(desk => {
-            const svg = desk.querySelector('.rhd-figure svg'), panel = desk.querySelector('.rhd-panel');
-            return !svg || Number(svg.getAttribute('width')) <= 2000 && panel.clientWidth > 0;
-        })"""
-    )
+    """Wait until the width of the pane has reached the kernel: the first picture after that is drawn for the page."""
+    assert wait_for_kernel(sight, "print(desk.payload['stamp'] > 1)") == "True"
 
 
 def select(sight: Any, text: str, index: int = 0) -> None:
@@ -135,8 +130,10 @@ def test_a_broken_line_shows_its_fault_keeps_the_picture_and_mends(desk: Any) ->
 def test_typing_never_loses_a_key_the_caret_or_the_scroll_position(desk: Any) -> None:
     sight = desk(cell(SHEET + "\n" * 60))
     page = sight.page
-    page.evaluate("(() => { const a = document.querySelector('.rhd-text'); a.focus();"
-                  " a.setSelectionRange(a.value.length, a.value.length); })()")
+    page.evaluate(
+        "(() => { const a = document.querySelector('.rhd-text'); a.focus();"
+        " a.setSelectionRange(a.value.length, a.value.length); })()"
+    )
     page.keyboard.type("# one note, typed quickly and in one go, to see that nothing is lost", delay=3)
     wanted = SHEET + "\n" * 60 + "# one note, typed quickly and in one go, to see that nothing is lost"
     assert page.input_value(".rhd-text") == wanted
@@ -144,11 +141,9 @@ def test_typing_never_loses_a_key_the_caret_or_the_scroll_position(desk: Any) ->
     top = page.evaluate("document.querySelector('.rhd-text').scrollTop")
     page.keyboard.type(" more")
     page.wait_for_function("document.querySelector('.rhd-text').value.endsWith(' more')")
-    sight.page.wait_for_timeout(0)
     assert page.evaluate("document.querySelector('.rhd-panel').scrollTop") == 150
     assert page.evaluate("document.querySelector('.rhd-text').scrollTop") == top
     assert page.evaluate("document.activeElement.className") == "rhd-text"
-    page.wait_for_function("true")
     assert wait_for_kernel(sight, "print(desk.text.endswith(' more'))") == "True"
     page.keyboard.press("Control+z")
     assert not page.input_value(".rhd-text").endswith(" more")
@@ -174,8 +169,10 @@ def test_arrows_tell_their_story_and_lead_to_their_line_by_keyboard(desk: Any) -
     for words in ("origin: typed", "source: calorimeter", "cumulative", "variance from: A1"):
         expect_text(sight, ".rhd-card", words)
     page.keyboard.press("Enter")
-    chosen = page.evaluate("(() => { const a = document.querySelector('.rhd-text');"
-                           " return a.value.slice(a.selectionStart, a.selectionEnd); })()")
+    chosen = page.evaluate(
+        "(() => { const a = document.querySelector('.rhd-text');"
+        " return a.value.slice(a.selectionStart, a.selectionEnd); })()"
+    )
     assert chosen == "[A1] SUB + O2(g) -> ACD + H2O(l)"
     assert page.evaluate("document.activeElement.className") == "rhd-text"
     clean(sight)
@@ -213,8 +210,13 @@ def test_choices_reach_the_kernel(desk: Any) -> None:
 
 def test_hostile_names_appear_as_text(desk: Any) -> None:
     evil = "<img src=http://example.invalid/x onerror=alert(1)><script>window.hacked=1</script>'`$x$&amp;"
-    text = (SHEET.replace("in one go", evil).replace("starting alcohol", evil).replace("calorimeter", evil)
-            .replace("SUB ", "<b>S</b> ").replace("SUB +", "<b>S</b> +"))
+    text = (
+        SHEET.replace("in one go", evil)
+        .replace("starting alcohol", evil)
+        .replace("calorimeter", evil)
+        .replace("SUB ", "<b>S</b> ")
+        .replace("SUB +", "<b>S</b> +")
+    )
     sight = desk(cell(text))
     for view in ("routes", "steps", "heat", "typed"):
         sight.page.click(f".rhd-tabs [data-view='{view}']")
@@ -274,8 +276,10 @@ def test_one_desk_shown_twice_stays_in_step_and_closes_everywhere(desk: Any) -> 
     retype(sight, "-550", "-400", 0)
     expect_text(sight, ".rhd-figure", "−500", 1)
     assert page.locator(".rhd-text").nth(1).input_value() == page.locator(".rhd-text").nth(0).input_value()
-    page.evaluate("(() => { const a = document.querySelectorAll('.rhd-text')[1]; a.focus();"
-                  " a.setSelectionRange(a.value.length, a.value.length); })()")
+    page.evaluate(
+        "(() => { const a = document.querySelectorAll('.rhd-text')[1]; a.focus();"
+        " a.setSelectionRange(a.value.length, a.value.length); })()"
+    )
     page.keyboard.type("# end")
     page.wait_for_function("document.querySelectorAll('.rhd-text')[0].value.endsWith('# end')")
     assert page.evaluate("document.activeElement === document.querySelectorAll('.rhd-text')[1]")
@@ -303,8 +307,10 @@ def test_a_change_from_code_reaches_the_page_and_keeps_the_caret(desk: Any) -> N
     select(sight, "-295")
     sight.ask("desk.text = '# first line\\n' + desk.text.replace('-550', '-400')")
     expect_text(sight, ".rhd-figure", "−500")
-    chosen = sight.page.evaluate("(() => { const a = document.querySelector('.rhd-text');"
-                                 " return a.value.slice(a.selectionStart, a.selectionEnd); })()")
+    chosen = sight.page.evaluate(
+        "(() => { const a = document.querySelector('.rhd-text');"
+        " return a.value.slice(a.selectionStart, a.selectionEnd); })()"
+    )
     assert chosen == "-295"
     clean(sight)
 
@@ -342,8 +348,10 @@ def test_a_restart_leaves_the_last_picture_and_says_so(desk: Any) -> None:
 def test_a_saved_notebook_without_its_kernel_shows_the_figure(desk: Any) -> None:
     sight = desk()
     page = sight.page
-    assert page.evaluate("getComputedStyle(document.querySelector('.rhd-twin').closest('.jp-OutputArea-child')).display"
-                         ) == "none"
+    assert (
+        page.evaluate("getComputedStyle(document.querySelector('.rhd-twin').closest('.jp-OutputArea-child')).display")
+        == "none"
+    )
     name = page.evaluate("panel.context.path")
     page.evaluate("panel.context.save()")
     page.evaluate("window.jupyterapp.serviceManager.sessions.shutdownAll()")
@@ -399,13 +407,17 @@ def test_the_dark_theme_is_followed(desk: Any) -> None:
     page = sight.page
 
     def colours() -> Any:
-        return page.evaluate("[getComputedStyle(document.querySelector('.rhd')).backgroundColor,"
-                             " getComputedStyle(document.querySelector('.rh-diagram')).color]")
+        return page.evaluate(
+            "[getComputedStyle(document.querySelector('.rhd')).backgroundColor,"
+            " getComputedStyle(document.querySelector('.rh-diagram')).color]"
+        )
 
     light = colours()
     page.evaluate("jupyterapp.commands.execute('apputils:change-theme', {theme: 'JupyterLab Dark'})")
     page.wait_for_function("document.body.dataset.jpThemeLight === 'false'")
-    page.wait_for_function("(old) => getComputedStyle(document.querySelector('.rhd')).backgroundColor !== old", arg=light[0])
+    page.wait_for_function(
+        "(old) => getComputedStyle(document.querySelector('.rhd')).backgroundColor !== old", arg=light[0]
+    )
     dark = colours()
     assert dark[0] != light[0]
     assert dark[1] != light[1]
@@ -415,8 +427,10 @@ def test_the_dark_theme_is_followed(desk: Any) -> None:
 
 
 def test_a_file_changed_underneath_is_noticed(desk: Any) -> None:
-    code = (f"import routeheat_widgets as rw, pathlib\npath = pathlib.Path('routes_{os.getpid()}.txt')\n"
-            f"path.write_text({SHEET!r}, encoding='utf-8')\ndesk = rw.RouteDesk(path=path)\ndesk")
+    code = (
+        f"import routeheat_widgets as rw, pathlib\npath = pathlib.Path('routes_{os.getpid()}.txt')\n"
+        f"path.write_text({SHEET!r}, encoding='utf-8')\ndesk = rw.RouteDesk(path=path)\ndesk"
+    )
     sight = desk(code)
     retype(sight, "-550", "-400")
     expect_text(sight, ".rhd-figure", "−500")
@@ -427,6 +441,8 @@ def test_a_file_changed_underneath_is_noticed(desk: Any) -> None:
     expect_text(sight, ".rhd-file", "was changed by someone else")
     sight.page.click(".rhd-file button >> nth=0")
     sight.page.wait_for_function("document.querySelector('.rhd-text').value === '# theirs\\n'")
-    assert sight.ask("print('-400' in next(pathlib.Path('.').glob('routes_*.desk.txt')).read_text(encoding='utf-8'))"
-                     ) == "True"
+    assert (
+        sight.ask("print('-400' in next(pathlib.Path('.').glob('routes_*.desk.txt')).read_text(encoding='utf-8'))")
+        == "True"
+    )
     clean(sight)

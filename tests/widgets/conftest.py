@@ -6,9 +6,10 @@ from collections.abc import Callable, Iterator
 from typing import Any
 
 import pytest
+
 import routeheat_widgets as rw
 
-SHEET = '''uncertainty k = 2
+SHEET = """uncertainty k = 2
 
 species
   SUB  C7H8O(l)    name "starting alcohol"
@@ -34,7 +35,7 @@ route B "over the aldehyde" makes ACD
        dH -180 ± 12 kJ/mol | yield 90 %
   [B2] OXI + 1/2 O2(g) -> ACD
        dH -295 ± 15 kJ/mol | yield 92 %
-'''
+"""
 
 
 @pytest.fixture

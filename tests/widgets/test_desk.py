@@ -11,9 +11,10 @@ from typing import Any
 import comm
 import ipywidgets
 import pytest
+
 import routeheat as rh
 import routeheat_widgets as rw
-from routeheat_widgets import desk as desk_module
+from routeheat_widgets import _core as desk_module
 
 Make = Callable[..., Any]
 
@@ -99,7 +100,9 @@ def test_an_unknown_choice_is_refused(make_desk: Make) -> None:
         make_desk(text="").show("routes", basis="kg")
 
 
-@pytest.mark.parametrize("message", [{"kind": "boom"}, {}, {"kind": "edit"}, {"kind": "option", "key": "x", "value": ""}])
+@pytest.mark.parametrize(
+    "message", [{"kind": "boom"}, {}, {"kind": "edit"}, {"kind": "option", "key": "x", "value": ""}]
+)
 def test_a_message_that_makes_no_sense_is_seen(make_desk: Make, message: dict[str, str]) -> None:
     desk = make_desk(text="")
     desk._receive(desk, message, [])
@@ -178,7 +181,7 @@ def test_overlapping_edits_leave_no_torn_state(make_desk: Make, sheet_text: str)
         picture = item["svg"] + item["tables"]
         # 80 % yield: per mole of product the route view shows dH / 0.8, the steps view dH itself
         shown = f"−{heat}" if item["view"] == "steps" else f"−{int(heat) / 0.8:.0f}"
-        assert item["view"] == "steps" and "Route B" in picture or shown in picture
+        assert (item["view"] == "steps" and "Route B" in picture) or shown in picture
     assert desk.payload["text"] == desk.text
     final = make_desk(text=desk.text)
     final.view = desk.view
@@ -235,7 +238,7 @@ def test_closing_leaves_nothing_behind(sheet_text: str) -> None:
     desk._receive(desk, {"kind": "figure", "open": True}, [])
     assert desk.payload["figure"]
     assert desk.last_error is None
-    desk.observe(lambda change: None, names="payload")
+    desk.observe(lambda _change: None, names="payload")
     desk.close()
     assert set(ipywidgets.Widget.get_manager_state()["state"]) == widgets
     assert set(comm.get_comm_manager().comms) == comms
@@ -313,7 +316,7 @@ def test_a_long_paste_from_code_is_a_fault(make_desk: Make, sheet_text: str) -> 
 
 
 def test_the_script_has_no_imports_and_no_addresses() -> None:
-    script, style = desk_module._script(), desk_module._style()
+    script, style = desk_module.script(), desk_module.style()
     assert "import " not in script
     assert "http" not in script + style
     assert "url(" not in style
@@ -323,3 +326,10 @@ def test_the_width_of_the_pane_is_used(make_desk: Make, sheet_text: str) -> None
     desk = make_desk(text=sheet_text, view="steps")
     desk._receive(desk, {"kind": "width", "width": 700}, [])
     assert 'width="700"' in desk.payload["svg"]
+
+
+def test_messages_are_not_claimed_by_the_thread_that_spoke_last(make_desk: Make, sheet_text: str) -> None:
+    desk = make_desk(text=sheet_text)
+    desk.comm._reply_subshell_id = None
+    desk.view = "steps"
+    assert not hasattr(desk.comm, "_reply_subshell_id")

@@ -8,6 +8,7 @@ from pathlib import Path
 from typing import Any
 
 import pytest
+
 from routeheat import RouteheatError
 from routeheat_widgets._file import SheetFile
 

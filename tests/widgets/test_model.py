@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import pytest
+
 from routeheat_widgets._model import clean_text, count_lines, read_model
 
 

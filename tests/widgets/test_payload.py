@@ -6,11 +6,12 @@ import json
 from typing import Any
 
 import pytest
+
 from routeheat import UnknownName
 from routeheat_widgets._model import read_model
 from routeheat_widgets._payload import VIEWS, sheet_content, view_content, view_named
 
-HOSTILE = '<script>alert(1)</script>&"\'`$x$%{y}'
+HOSTILE = "<script>alert(1)</script>&\"'`$x$%{y}"
 
 
 def content(text: str, view: str, **options: str) -> dict[str, Any]:
@@ -34,7 +35,9 @@ def test_an_empty_sheet_has_words_for_every_view(view: str) -> None:
 
 @pytest.mark.parametrize("view", list(VIEWS))
 def test_hostile_names_are_text_in_every_view(sheet_text: str, view: str) -> None:
-    text = sheet_text.replace("in one go", HOSTILE.replace('"', "")).replace("starting alcohol", "<img src=x onerror=1>")
+    text = sheet_text.replace("in one go", HOSTILE.replace('"', "")).replace(
+        "starting alcohol", "<img src=x onerror=1>"
+    )
     text = text.replace("invented table", "<b>&amp;</b>")
     found = content(text, view)
     for part in (found["svg"], found["tables"]):

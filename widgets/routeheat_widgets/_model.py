@@ -85,8 +85,9 @@ class _Merge:
         self.names: list[tuple[str, str]] = []
         self.left_out: list[str] = []
 
-    def choose(self, kind: str, new: Mapping[str, _T], old: Mapping[str, _T], broken: Mapping[str, int]
-               ) -> dict[str, _T]:
+    def choose(
+        self, kind: str, new: Mapping[str, _T], old: Mapping[str, _T], broken: Mapping[str, int]
+    ) -> dict[str, _T]:
         """The parts to show, in the order of the new text; a part that is gone stays while anything is broken."""
         found: dict[str, _T] = {}
         for name in _woven(list(new), list(old)):
@@ -119,7 +120,7 @@ def _merge(model: DeskModel, earlier: Sheet, broken: Broken) -> DeskModel:
         return replace(model, shown=earlier, kept=kept, kept_names=frozenset(names))
     sheet = model.sheet
     merge = _Merge(model.faults[0].line)
-    rows = Rows(merge.choose("known", sheet.known, earlier.known, broken.rows).values(), sheet.k)
+    rows = Rows(merge.choose("known", sheet.known, earlier.known, broken.rows).values(), sheet.k, sheet.unstated)
     targets = merge.choose("target", sheet.targets, earlier.targets, broken.rows)
     chosen = merge.choose("route", sheet.routes, earlier.routes, broken.routes)
     routes = {name: replace(route, known=rows) for name, route in chosen.items()}
@@ -129,6 +130,12 @@ def _merge(model: DeskModel, earlier: Sheet, broken: Broken) -> DeskModel:
             healthy = tuple(step for step in route.steps if step.label not in broken.steps)
             partial[name] = replace(route, steps=healthy, known=rows)
     species = {**earlier.species, **sheet.species}
-    shown = Sheet(sheet.coverage, species, rows, targets, routes, sheet.notices)
-    return replace(model, shown=shown, kept=tuple(merge.kept), kept_names=frozenset(merge.names),
-                   left_out=tuple(merge.left_out), partial=partial)
+    shown = replace(sheet, species=species, known=rows, targets=targets, routes=routes)
+    return replace(
+        model,
+        shown=shown,
+        kept=tuple(merge.kept),
+        kept_names=frozenset(merge.names),
+        left_out=tuple(merge.left_out),
+        partial=partial,
+    )

@@ -88,15 +88,23 @@ def view_content(
     return Shown(picture, {**base, **_EMPTY, **content})
 
 
-_EMPTY: dict[str, Any] = {"svg": "", "tables": "", "empty": "", "problem": [], "kept": [], "left_out": [], "code": "",
-                          "details": {}}
+_EMPTY: dict[str, Any] = {
+    "svg": "",
+    "tables": "",
+    "empty": "",
+    "problem": [],
+    "kept": [],
+    "left_out": [],
+    "code": "",
+    "details": {},
+}
 
 
 def _drawn(model: DeskModel, picture: Picture, width: float | None, path: Path | None) -> dict[str, Any]:
     ladder = None if picture.drawn is None else as_ladder(picture.drawn)
     kept = list(model.kept) if model.kept_names & picture.uses else []
     return {
-        "svg": "" if ladder is None else svg(ladder, width=width),
+        "svg": "" if ladder is None else str(svg(ladder, width=width)),
         "tables": "".join(_table(table, ladder) for table in picture.tables),
         "empty": picture.empty,
         "kept": kept,

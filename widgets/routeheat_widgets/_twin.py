@@ -10,8 +10,7 @@ from routeheat.present.markup import plain
 from routeheat_widgets._model import DeskModel, count_lines
 from routeheat_widgets._view import Picture
 
-CAUTION = ("Screening aid: values typed are not verified; no substitute for tests, a hazard study or a competent "
-           "person.")
+CAUTION = "Screening aid: values typed are not verified; no substitute for tests, a hazard study or a competent person."
 
 
 def code(model: DeskModel, picture: Picture, path: Path | None) -> str:
@@ -19,7 +18,7 @@ def code(model: DeskModel, picture: Picture, path: Path | None) -> str:
     if model.kept_names & picture.uses or not picture.code:
         return ""
     source = sheet_literal(model.text) if path is None else f"Path({str(path)!r})"
-    lines = ["import routeheat as rh", "from IPython.display import HTML, display"]
+    lines = ["import routeheat as rh", "from IPython.display import display"]
     if path is not None:
         lines.insert(0, "from pathlib import Path\n")
     if model.healthy:
@@ -33,7 +32,7 @@ def code(model: DeskModel, picture: Picture, path: Path | None) -> str:
     else:
         drawn = "diagram" if any("diagram" in line for line in picture.code) else "result"
         shown = "" if any(line.startswith("result = diagram") for line in picture.code) else "result, "
-        lines.append(f"display({shown}HTML(rh.svg({drawn})))")
+        lines.append(f"display({shown}rh.svg({drawn}))")
     return "\n".join(lines)
 
 

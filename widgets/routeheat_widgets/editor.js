@@ -2,8 +2,8 @@
 
 const LINE = 20; // px; desk.css sets the same line height
 const PAD = 6; // px; padding of the textarea
-const PAUSE = 90; // ms without a key before an edit is sent
-const LONGEST_PAUSE = 350; // ms after which an edit is sent although keys go on
+const PAUSE = 120; // ms without a key before an edit is sent
+const LONGEST_PAUSE = 400; // ms after which an edit is sent although keys go on
 const PATIENCE = 4000; // ms without an answer before the reader is told
 const TEXT_LIMIT = 2000000; // characters; the kernel refuses more, the page never sends them
 

@@ -33,8 +33,13 @@ class HeatView(View):
         """The combination with its ledger and the other combinations, or the reason why there is none."""
         offered = _targets(model)
         if not offered:
-            return Picture(None, (), (), empty="No target and no step is typed yet. A target is a line like "
-                                               "target [T] CH4(g) + 2 H2O(g) -> CO2(g) + 4 H2(g)")
+            return Picture(
+                None,
+                (),
+                (),
+                empty="No target and no step is typed yet. A target is a line like "
+                "target [T] CH4(g) + 2 H2O(g) -> CO2(g) + 4 H2(g)",
+            )
         _, row, code = offered[options["target"]]
         uses = frozenset([("known", label) for label in model.shown.known] + [_part(model, options["target"])])
         try:
@@ -88,6 +93,8 @@ def _other_table(result: Combination, others: tuple[Combination, ...]) -> Table:
         f"{name} adds {sum_text([(pool[label], c) for label, c in cycle.items() if c])}"
         for name, cycle in zip(result.parameters, result.cycles, strict=True)
     ]
-    notes = (f"any multiple of a cycle may be added: {'; '.join(cycles)}",
-             "combinations that differ in their heat show how well the known rows agree")
+    notes = (
+        f"any multiple of a cycle may be added: {'; '.join(cycles)}",
+        "combinations that differ in their heat show how well the known rows agree",
+    )
     return Table("Not unique: what other rows give", columns, rows, notes)

@@ -3,7 +3,7 @@
 const CARD = "Point at an arrow, or move to it with the Tab key, to read its equation, basis, source and what makes " +
   "its uncertainty. Click it or press Enter to go to its line.";
 
-const SMALLEST = 0.7; // smallest scale at which a diagram is shown
+const SMALLEST = 0.66; // smallest scale at which a diagram is shown
 
 function makePage(client, send, goTo) {
   const tabs = h("div", { class: "rhd-tabs", role: "tablist", "aria-label": "Questions" });

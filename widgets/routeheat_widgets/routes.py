@@ -80,6 +80,5 @@ def _named(alike: Mapping[str, Route], routes: Mapping[str, Route]) -> str:
 
 def _details(profile: Profile) -> dict[tuple[str, str], Details]:
     return {
-        (profile.route.heading, item.label): contributors(item.heat)
-        for item in profile.steps if item.heat is not None
+        (profile.route.heading, item.label): contributors(item.heat) for item in profile.steps if item.heat is not None
     }

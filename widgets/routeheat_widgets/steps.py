@@ -31,8 +31,13 @@ class Steps(View):
         """Arrows of the single steps, and the table of the route's profile."""
         routes = _routes(model)
         if not routes:
-            return Picture(None, (), (), empty="No route is typed yet. A route starts with a line like "
-                                               "route A \"over the nitro compound\" makes ANI")
+            return Picture(
+                None,
+                (),
+                (),
+                empty="No route is typed yet. A route starts with a line like "
+                'route A "over the nitro compound" makes ANI',
+            )
         route = routes[options["route"]]
         uses = frozenset([("route", route.name)])
         diagram = rh.step_ladder(route)

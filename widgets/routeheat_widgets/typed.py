@@ -23,8 +23,12 @@ class Typed(Shown):
 
     def tables(self) -> tuple[Table, ...]:
         """Species, known rows, targets, and the steps of every route; parts that are not typed are left out."""
-        found = [_species(self.sheet), _rows("Known rows", self.sheet.known), _rows("Targets", self.sheet.targets),
-                 *_steps(self.sheet)]
+        found = [
+            _species(self.sheet),
+            _rows("Known rows", self.sheet.known),
+            _rows("Targets", self.sheet.targets),
+            *_steps(self.sheet),
+        ]
         kept = tuple(table for table in found if table.rows)
         return kept or (Table("Nothing is typed yet", (_LINE,), ()),)
 
@@ -51,29 +55,53 @@ class TypedView(View):
 
 
 def _species(sheet: Sheet) -> Table:
-    columns = (Column("name", "species"), _LINE, Column("formula", "formula"), Column("phase", "phase"),
-               Column("mass", "molar mass", "g/mol", "right", 2), Column("title", "full name"), Column("cas", "CAS"))
+    columns = (
+        Column("name", "species"),
+        _LINE,
+        Column("formula", "formula"),
+        Column("phase", "phase"),
+        Column("mass", "molar mass", "g/mol", "right", 2),
+        Column("title", "full name"),
+        Column("cas", "CAS"),
+    )
     rows: list[tuple[Cell, ...]] = []
     for name, item in sheet.species.items():
         species = item.species
         mass = species.molar_mass
         formula: Cell = "not known" if species.formula is None else species.formula.rich
-        rows.append((name, item.line, formula, species.state, None if mass is None else float(mass), item.title,
-                     item.cas))
+        rows.append(
+            (name, item.line, formula, species.state, None if mass is None else float(mass), item.title, item.cas)
+        )
     return Table("Species", columns, tuple(rows))
 
 
 def _rows(title: str, rows: Mapping[str, Row]) -> Table:
-    columns = (Column("label", "label"), _LINE, Column("reaction", "reaction"), Column("heat", "heat as typed"),
-               Column("source", "source"), Column("other", "other keys"))
-    return Table(title, columns, tuple((label, row.line, row.reaction.rich, _heat(row), row.source, _kept(row))
-                                       for label, row in rows.items()))
+    columns = (
+        Column("label", "label"),
+        _LINE,
+        Column("reaction", "reaction"),
+        Column("heat", "heat as typed"),
+        Column("source", "source"),
+        Column("other", "other keys"),
+    )
+    return Table(
+        title,
+        columns,
+        tuple((label, row.line, row.reaction.rich, _heat(row), row.source, _kept(row)) for label, row in rows.items()),
+    )
 
 
 def _steps(sheet: Sheet) -> list[Table]:
-    columns = (Column("step", "step"), _LINE, Column("reaction", "reaction"), Column("heat", "heat as typed"),
-               Column("yield", "yield"), Column("temperature", "runs at"), Column("role", "role"),
-               Column("other", "other keys"))
+    columns = (
+        Column("step", "step"),
+        _LINE,
+        Column("reaction", "reaction"),
+        Column("heat", "heat as typed"),
+        Column("yield", "yield"),
+        Column("temperature", "runs at"),
+        Column("role", "role"),
+        Column("other", "other keys"),
+    )
     found = []
     for route in sheet.routes.values():
         rows = []
@@ -81,9 +109,18 @@ def _steps(sheet: Sheet) -> list[Table]:
             role = f"side row of {step.side_of}" if step.side_of else step.operation
             if step.label in route.used:
                 role = ", ".join(filter(None, (role, "defined in another route")))
-            rows.append((step.label, step.row.line, step.row.reaction.rich, _heat(step.row),
-                         "" if step.yield_ is None else step.yield_.text,
-                         "" if step.temperature is None else step.temperature.text, role, _kept(step.row)))
+            rows.append(
+                (
+                    step.label,
+                    step.row.line,
+                    step.row.reaction.rich,
+                    _heat(step.row),
+                    "" if step.yield_ is None else step.yield_.text,
+                    "" if step.temperature is None else step.temperature.text,
+                    role,
+                    _kept(step.row),
+                )
+            )
         found.append(Table(f"Route {route.heading}, makes {route.makes.text}", columns, tuple(rows)))
     return found
 

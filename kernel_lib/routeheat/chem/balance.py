@@ -115,22 +115,42 @@ def reference_species(symbol: str) -> Species | None:
 def formation(species: Species) -> Reaction:
     """Reference states of the elements → one mole of ``species``.
 
-    Raises ``ValueError`` with a reason when the formula is unknown, charged, an isotope is labelled, or an element has
-    no reference state here.
+    An aqueous ion is formed on the scale H^+(aq) = 0: H^+(aq) and H2(g) balance its charge, as in
+    ``Na(s) + H^+(aq) -> Na^+(aq) + 1/2 H2(g)`` (CODATA Key Values: J. D. Cox, D. D. Wagman, V. A. Medvedev, 1989).
+
+    Raises ``ValueError`` with a reason when the formula is unknown, an ion is not in water, an isotope is labelled, an
+    element has no reference state here, or the formation is zero by definition.
     """
     if species.formula is None:
         raise ValueError(f"the formula of {species} is not known")
-    if species.formula.charge:
-        raise ValueError(f"{species} is an ion: type its formation as an equation, on the scale H^+(aq) = 0")
-    needed: dict[Species, Fraction] = {}
+    charge = species.formula.charge
+    if charge and species.phase != "aq":
+        raise ValueError(f"{species} is an ion that is not in water: type its formation as an equation")
+    hydrogen, proton = _hydrogen()
+    net: dict[Species, Fraction] = {species: Fraction(1)}
+    gas = Fraction(-charge)
     for symbol, count in species.formula.counts:
         reference = reference_species(symbol)
         if reference is None or reference.formula is None:
             raise ValueError(f"{symbol} has no reference state here: type the formation as an equation")
-        needed[reference] = count / dict(reference.formula.counts)[symbol]
-    if species in needed:
-        raise ValueError(f"{species} is the reference state of its element: its formation is zero, and needs no row")
-    return Reaction(tuple((n, item) for item, n in needed.items()), ((Fraction(1), species),))
+        if charge and reference == hydrogen:
+            gas += count
+            continue
+        if reference == species:
+            raise ValueError(f"{species} is the reference state of its element: its formation is zero, "
+                             "and needs no row")  # fmt: skip
+        net[reference] = -count / dict(reference.formula.counts)[symbol]
+    if charge:
+        if species == proton:
+            raise ValueError(f"{species} is zero by definition, and needs no row")
+        net |= {hydrogen: -gas / 2, proton: Fraction(-charge)}
+    return Reaction.from_net(net)
+
+
+@cache
+def _hydrogen() -> tuple[Species, Species]:
+    """H2(g) and H^+(aq)."""
+    return Species("H2", "g", "", read_formula("H2")), Species("H^+", "aq", "", read_formula("H^+"))
 
 
 def combustion(species: Species, products: Sequence[Species]) -> Reaction:

@@ -36,6 +36,8 @@ class Datum:
     """Where the number comes from, as typed."""
     of: str = ""
     """The equation it belongs to, so that equal labels of two sheets are not taken for one datum."""
+    estimated: bool = False
+    """True when it is no measurement."""
 
     @property
     def name(self) -> str:
@@ -143,6 +145,11 @@ class HeatSum:
         return tuple(dict.fromkeys(datum.name for datum, _ in self.terms if datum.u is None))
 
     @property
+    def estimated(self) -> tuple[str, ...]:
+        """Data that are no measurements, by name; a sum with any of them is an estimate."""
+        return tuple(dict.fromkeys(datum.name for datum, _ in self.terms if datum.estimated))
+
+    @property
     def complete(self) -> bool:
         """True when the uncertainty of every datum is stated."""
         return not self.not_stated
@@ -173,7 +180,8 @@ class HeatSum:
         if self.unknowns:
             return Reading(None, None, self.k, words=self.text)
         nothing = all(datum.u is None for datum, _ in self.terms) and bool(self.terms)
-        return Reading(float(self.exact), None if nothing else self.u, self.k, at_least=not self.complete)
+        spread = None if nothing else self.u
+        return Reading(float(self.exact), spread, self.k, not self.complete, estimated=bool(self.estimated))
 
     @property
     def text(self) -> str:
@@ -191,7 +199,8 @@ class HeatSum:
         sign = f" {MINUS} " if self.exact < 0 else " + "
         u = None if all(datum.u is None for datum in stated) else self.u
         at_least = any(datum.u is None for datum in stated)
-        return written + sign + reading(Reading(float(abs(self.exact)), u, self.k, at_least))
+        number = Reading(float(abs(self.exact)), u, self.k, at_least, estimated=bool(self.estimated))
+        return written + sign + reading(number)
 
     @property
     def quantity(self) -> Any:

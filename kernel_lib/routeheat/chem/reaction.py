@@ -6,7 +6,7 @@ Stoichiometric numbers are positive for products and negative for reactants (IUP
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from fractions import Fraction
 
 from routeheat.chem.species import Species
@@ -29,10 +29,20 @@ class Reaction:
     reversible: bool = False
     """True when the arrow typed is an equilibrium arrow; arithmetic does not use it."""
 
+    net: Mapping[Species, Fraction] = field(init=False, repr=False, compare=False)
+    """Stoichiometric number of every species that does not cancel, in typed order."""
+
     def __post_init__(self) -> None:
         for coefficient, species in (*self.reactants, *self.products):
             if coefficient <= 0:
                 raise ValueError(f"coefficient of {species} must be positive, is {coefficient}")
+        # networks of hundreds of rows ask for it again and again, so it is made once, adding only where needed
+        total: dict[Species, Fraction] = {}
+        for coefficient, species in self.reactants:
+            total[species] = total[species] - coefficient if species in total else -coefficient
+        for coefficient, species in self.products:
+            total[species] = total[species] + coefficient if species in total else coefficient
+        object.__setattr__(self, "net", {species: nu for species, nu in total.items() if nu})
 
     @classmethod
     def from_net(cls, net: Mapping[Species, Fraction]) -> Reaction:
@@ -41,15 +51,6 @@ class Reaction:
             tuple((-nu, species) for species, nu in net.items() if nu < 0),
             tuple((nu, species) for species, nu in net.items() if nu > 0),
         )
-
-    @property
-    def net(self) -> dict[Species, Fraction]:
-        """Stoichiometric number of every species that does not cancel, in typed order."""
-        total: dict[Species, Fraction] = {}
-        for sign, side in ((-1, self.reactants), (1, self.products)):
-            for coefficient, species in side:
-                total[species] = total.get(species, Fraction(0)) + sign * coefficient
-        return {species: nu for species, nu in total.items() if nu}
 
     @property
     def species(self) -> tuple[Species, ...]:

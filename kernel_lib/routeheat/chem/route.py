@@ -6,7 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 from fractions import Fraction
 
-from routeheat.chem.row import Row, Rows
+from routeheat.chem.row import Row, Rows, Unstated
 from routeheat.chem.species import Species
 from routeheat.chem.step import Step
 from routeheat.errors import Fault
@@ -73,7 +73,9 @@ class Sheet:
     routes: Mapping[str, Route]
     """Routes by name."""
     notices: tuple[Fault, ...] = field(default=(), compare=False)
-    """How doubtful things were read, and which keys nothing uses yet."""
+    """How doubtful things were read."""
+    unstated: Unstated | None = None
+    """The standard uncertainty of rows that state none, as a class; ``None`` when the sheet does not say."""
 
     @property
     def k(self) -> float:

@@ -10,61 +10,26 @@ from routeheat.chem.heat import Datum, HeatSum
 from routeheat.chem.measured import Measured
 from routeheat.chem.reaction import Reaction
 from routeheat.chem.species import Species
-from routeheat.units import KELVIN, KJ, KJ_PER_KG, KJ_PER_MOL, ZERO_CELSIUS
+from routeheat.chem.typed_heat import REFERENCE_TEMPERATURE, Heat
+from routeheat.present.numbers import number
+from routeheat.units import KELVIN, KJ_PER_MOL
 
-REFERENCE_TEMPERATURE = Fraction(25) + ZERO_CELSIUS
-"""25 °C in kelvin: the temperature of a known row's heat that does not say its own."""
+__all__ = ["REFERENCE_TEMPERATURE", "Heat", "Row", "Rows", "Unstated"]
 
 
 @dataclass(frozen=True, slots=True)
-class Heat:
-    """A heat as typed behind ``dH``: a number per something, or a letter for an unknown."""
+class Unstated:
+    """What the user decided about rows that state no uncertainty, as a class."""
 
-    amount: Measured | None
-    """The number with its unit (kJ/mol, kJ/kg, kJ …); ``None`` for a symbolic unknown. Exothermic is negative."""
-    basis: Species | None = None
-    """The species it is stated per (``kJ/kg of NB``); ``None`` when it is per mole of reaction as written."""
-    symbol: str = ""
-    """Letter of an unknown heat, in kJ/mol of reaction as written."""
-    temperature: Measured | None = None
-    """The heat's own temperature (``at 25 degC``); ``None`` when not typed."""
-
-    def factor(self, reaction: Reaction) -> Fraction:
-        """kJ/mol of reaction as written, per unit of :attr:`amount`; exact.
-
-        Raises ``ValueError`` when the basis does not take part or has no molar mass.
-        """
-        assert self.amount is not None
-        unit = self.amount.unit
-        if unit.dimension == KJ.dimension:
-            return unit.factor / KJ.factor
-        number = Fraction(1)
-        if self.basis is not None:
-            number = abs(reaction.net.get(self.basis, Fraction(0)))
-            if not number:
-                both = self.basis in reaction.species
-                why = "stands on both sides and cancels" if both else "does not take part in the reaction"
-                raise ValueError(f"{self.basis} {why}: no heat can be stated per amount of it")
-        if unit.dimension == KJ_PER_KG.dimension:
-            mass = self.basis.molar_mass if self.basis is not None else None
-            if mass is None:
-                raise ValueError(f"a heat per mass needs a molar mass, and {self.basis or 'the species'} has none")
-            return unit.factor / KJ_PER_KG.factor * mass / 1000 * number
-        return unit.convert(Fraction(1), KJ_PER_MOL) * number
+    u: Measured
+    """Their standard uncertainty, an energy per amount."""
+    reason: str
+    """Why that is right."""
 
     @property
-    def text(self) -> str:
-        """As written in a sheet behind ``dH``."""
-        if self.amount is None:
-            body = self.symbol
-        else:
-            number = self.amount.text
-            qualifier = ""
-            if number.endswith(")") and self.amount.spread is not None and self.amount.spread.stated:
-                qualifier = f" ({self.amount.spread.stated})"
-                number = number[: -len(qualifier)]
-            body = number + (f" of {self.basis}" if self.basis is not None else "") + qualifier
-        return body + (f" at {self.temperature.text}" if self.temperature is not None else "")
+    def kj_per_mol(self) -> Fraction:
+        """The standard uncertainty in kJ/mol."""
+        return self.u.to(KJ_PER_MOL)
 
 
 @dataclass(frozen=True, slots=True)
@@ -77,37 +42,68 @@ class Row:
     heat: Heat | None = None
     """``None`` when no heat is typed."""
     kind: str = "reaction"
-    """``reaction``, ``formation``, ``combustion``, ``fusion``, ``vaporisation``, ``sublimation``, ``target``."""
+    """``reaction``, ``formation``, ``combustion``, ``fusion``, ``vaporisation``, ``sublimation``, ``solution``,
+    ``dilution``, ``neutralisation``, ``target``."""
     subject: Species | None = None
-    """The species of a formation, combustion or phase-change row."""
+    """The species that a row is named after (``formation of …``); ``None`` for an equation."""
     source: str = ""
     """Where the heat comes from, as typed."""
     settings: tuple[tuple[str, object], ...] = ()
-    """Every other key with its value as typed; keys that nothing uses yet are kept here."""
+    """Every other key with its value as typed."""
     line: int = field(default=0, compare=False)
     """Line of the sheet, counted from 1; 0 when it was made in code."""
 
     @property
     def datum(self) -> Datum | None:
-        """The heat as a datum in kJ per mole of reaction as written; ``None`` when none is typed."""
+        """The row's own datum in kJ per mole of reaction as written; ``None`` when no heat is typed.
+
+        For a heat taken from an analogue it is the difference from it, which is zero with a wide uncertainty.
+        """
         if self.heat is None:
             return None
         if self.heat.amount is None:
             return Datum(self.label, symbol=self.heat.symbol, source=self.source, of=self.reaction.text)
-        factor = self.heat.factor(self.reaction)
-        u = self.heat.amount.u
         return Datum(
             self.label,
-            value=self.heat.amount.value * factor,
-            u=None if u is None else u * factor,
-            source=self.source,
+            value=self.heat.value(self.reaction),
+            u=self.heat.u(self.reaction),
+            source=self.source or (f"like {self.heat.analogue}" if self.heat.analogue else ""),
             of=self.reaction.text,
+            estimated=self.estimated,
         )
 
     def heat_sum(self, k: float = 2.0) -> HeatSum | None:
-        """The typed heat as a sum of one datum; ``None`` when none is typed."""
+        """The typed heat as a sum of its data; ``None`` when none is typed."""
         datum = self.datum
-        return None if datum is None else HeatSum.of(datum, k=k)
+        if datum is None:
+            return None
+        own = HeatSum.of(datum, k=k)
+        taken = None if self.heat is None else self.heat.taken
+        return own if taken is None else HeatSum.of(taken, k=k) + own
+
+    @property
+    def estimated(self) -> bool:
+        """True when the heat is no measurement: taken from an analogue, or marked ``estimated dH``."""
+        if self.heat is not None and self.heat.key == "like":
+            return True
+        marked = {part.strip() for part in str(self.setting("estimated") or "").split(",")}
+        return self.heat is not None and bool(marked & {"dH", self.heat.key})
+
+    @property
+    def remarks(self) -> tuple[str, ...]:
+        """How the typed heat is to be understood, where it is no measured ΔrH."""
+        heat = self.heat
+        if heat is None:
+            return ()
+        found = []
+        if heat.key == "dU":
+            work = number(float(heat.volume_work(self.reaction)), 3)
+            found.append(f"{self.label}: ΔU is typed, ΔH = ΔU + Δn(gas) R T adds {work} kJ/mol; corrections of a bomb "
+                         "to standard states (Washburn) are not included")  # fmt: skip
+        if self.estimated:
+            like = f", like {heat.analogue}" if heat.analogue else ""
+            found.append(f"{self.label} is estimated{like}")
+        return tuple(found)
 
     @property
     def temperature(self) -> Fraction:
@@ -124,12 +120,14 @@ class Row:
 class Rows(Mapping[str, Row]):
     """Rows by label, in typed order. Immutable; equal when the rows are equal in order."""
 
-    __slots__ = ("_by_label", "k")
+    __slots__ = ("_by_label", "k", "unstated")
 
-    def __init__(self, rows: Iterable[Row] = (), k: float = 2.0) -> None:
+    def __init__(self, rows: Iterable[Row] = (), k: float = 2.0, unstated: Unstated | None = None) -> None:
         self._by_label = {row.label: row for row in rows}
         self.k = k
         """Coverage factor with which results over these rows are printed."""
+        self.unstated = unstated
+        """The sheet's line for rows that state no uncertainty; used by reconciliation."""
 
     def __getitem__(self, label: str) -> Row:
         return self._by_label[label]

@@ -2,24 +2,30 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterator
 from dataclasses import dataclass
+from functools import lru_cache
 
 from routeheat.draw.chart import CAP
 from routeheat.draw.declutter import Rect, Segment, Space, Spot
 
 HALF = 8.0
 """Half-width and half-height in px of the place that a dot takes."""
+_BARE = 11.0
+"""Half-height in px of a row without labels."""
 _GAP = 5.0
 """Distance in px of the nearest labels from the dots, so that a leader has a length."""
 _FAR = 1e6
-_STEPS = (0.0, 0.12, -0.12, 0.25, -0.25, 0.38, -0.38, 0.5, -0.5, 0.65, -0.65, 0.8, -0.8, 1.0, -1.0, 1.3, -1.3, 1.7, -1.7)
+_STEPS = (
+    0.0, 0.12, -0.12, 0.25, -0.25, 0.38, -0.38, 0.5, -0.5, 0.65, -0.65, 0.8, -0.8, 1.0, -1.0, 1.3, -1.3, 1.7, -1.7,
+)  # fmt: skip
 """Shifts of a label from its dot in widths of the label."""
+_BESIDE = 8.0
 _NEAR = 10.0
 """Shift in px up to which a label needs no leader."""
 _WORTH = 2
 """How many higher rows are tried even where a lower one holds all labels, since they may stand nearer."""
-_LANES = ((1, 1), (2, 1), (2, 2), (3, 2), (3, 3), (4, 4), (6, 6), (10, 10), (16, 16))
+_LANES = ((1, 1), (2, 1), (2, 2), (3, 2), (3, 3), (5, 5))
 
 
 @dataclass(frozen=True, slots=True)
@@ -42,27 +48,37 @@ class Placed:
     below: float
 
 
+@lru_cache(maxsize=256)
 def place(
-    tags: tuple[Tag, ...], obstacles: Iterable[tuple[float, float]], left: float, right: float, *, low: bool = False
+    tags: tuple[Tag, ...], whiskers: tuple[tuple[float, float], ...], left: float, right: float, *, low: bool = False
 ) -> Placed:
-    """Places for all tags between ``left`` and ``right`` px; ``obstacles`` are the whiskers on the line, px.
+    """Places for all tags between ``left`` and ``right`` px; ``whiskers`` are on the line, px.
 
     ``low`` prefers a low row to labels that stand nearer.
-    Raises :class:`RuntimeError` when there is no place, which a plot as wide as its widest label rules out.
     """
-    whiskers = tuple(obstacles)
     if not tags:
-        return Placed((), HALF, HALF)
+        return Placed((), _BARE, _BARE)
     found: list[tuple[float, tuple[Spot, ...]]] = []
     for index, (above, below) in enumerate(_LANES):
-        tries = (_fill(tags, order, whiskers, left, right, above, below) for order in _orders(tags))
+        choices = [_candidates(tags, each, left, right, above, below) for each in range(len(tags))]
+        tries = (_fill(tags, order, whiskers, left, right, choices) for order in _orders(tags))
         found += [item for item in tries if item is not None]
         if found and index >= (0 if low else _WORTH):
             _, spots = min(found, key=lambda item: item[0])
             return Placed(
                 spots, max(HALF, *(-spot.rect.y0 for spot in spots)), max(HALF, *(spot.rect.y1 for spot in spots))
             )
-    raise RuntimeError("no place for the labels of a row was found")
+    return _stacked(tags, left, right)
+
+
+def _stacked(tags: tuple[Tag, ...], left: float, right: float) -> Placed:
+    """Labels under each other, each as near under its dot as it fits: for labels as wide as the plot."""
+    spots, top = [], HALF + _GAP
+    for tag in tags:
+        x0 = max(min(tag.x - tag.w / 2, right - tag.w), left)
+        spots.append(Spot(Rect(x0, top, x0 + tag.w, top + tag.h), None))
+        top += tag.h + 2
+    return Placed(tuple(spots), _BARE, top - 2)
 
 
 def _orders(tags: tuple[Tag, ...]) -> Iterator[tuple[int, ...]]:
@@ -75,7 +91,7 @@ def _orders(tags: tuple[Tag, ...]) -> Iterator[tuple[int, ...]]:
 
 def _fill(
     tags: tuple[Tag, ...], order: tuple[int, ...], whiskers: tuple[tuple[float, float], ...], left: float,
-    right: float, above: int, below: int,
+    right: float, choices: list[list[tuple[float, Spot]]],
 ) -> tuple[float, tuple[Spot, ...]] | None:  # fmt: skip
     space = Space(Rect(left, -_FAR, right, _FAR))
     for tag in tags:
@@ -85,8 +101,7 @@ def _fill(
     found: dict[int, Spot] = {}
     total = 0.0
     for index in order:
-        best = next(((cost, spot) for cost, spot in _candidates(tags, index, left, right, above, below)
-                     if space.free(spot)), None)  # fmt: skip
+        best = next(((cost, spot) for cost, spot in choices[index] if space.free(spot)), None)
         if best is None:
             return None
         total += best[0]
@@ -112,12 +127,15 @@ def _candidates(
 ) -> list[tuple[float, Spot]]:
     tag = tags[index]
     lane = tag.h + 2
+    starts = [tag.x - tag.w / 2 + step * tag.w for step in _STEPS]
+    # just beside another dot, so that its leader has room
+    starts += [start for other in tags for start in (other.x + _BESIDE, other.x - _BESIDE - tag.w)]
     places = []
     for side, count in ((-1, above), (1, below)):
         for level in range(count):
             top = -HALF - _GAP - tag.h - level * lane if side < 0 else HALF + _GAP + level * lane
-            for step in _STEPS:
-                x0 = min(max(tag.x - tag.w / 2 + step * tag.w, left), right - tag.w)
+            for start in starts:
+                x0 = max(min(start, right - tag.w), left)
                 shift = abs(x0 + tag.w / 2 - tag.x)
                 cost = shift + 2.0 * max(0.0, shift - tag.w / 2) + 24.0 * level + (2.0 if side > 0 else 0.0)
                 spot = _spot(tags, index, Rect(x0, top, x0 + tag.w, top + tag.h), level)

@@ -48,6 +48,12 @@ def characters(*, bold: bool = False, italic: bool = False, mono: bool = False) 
 
 
 @cache
+def _everywhere() -> frozenset[int]:
+    """Code points that upright, bold and oblique letters all have."""
+    return characters() & characters(bold=True) & characters(italic=True)
+
+
+@cache
 def _advance(character: str, bold: bool, italic: bool) -> float:
     from matplotlib.ft2font import LoadFlags
 
@@ -63,7 +69,7 @@ def width(text: str, size: float, bold: bool = False, italic: bool = False) -> f
 
 def shown(text: str, *, mono: bool = False) -> str:
     """``text`` harmless, with a square in place of every character that one of the fonts lacks."""
-    kept = characters(mono=True) if mono else characters(bold=True) & characters(italic=True) & characters()
+    kept = characters(mono=True) if mono else _everywhere()
     return "".join(c if ord(c) in kept else LACKING for c in visible(text))
 
 

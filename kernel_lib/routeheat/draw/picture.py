@@ -14,7 +14,7 @@ class Picture(str):
     An image with its bytes inside is the one form that trusted, untrusted and converted notebooks all show.
     """
 
-    __slots__ = ("_height", "_drawing", "_width")
+    __slots__ = ("_drawing", "_height", "_width")
 
     _drawing: Drawing
     _width: float | None
@@ -31,6 +31,9 @@ class Picture(str):
     def alt(self) -> str:
         """The diagram in words."""
         return self._drawing.alt or plain(self._drawing.title)
+
+    def __repr__(self) -> str:
+        return self.alt
 
     def _repr_mimebundle_(self, include: object = None, exclude: object = None) -> dict[str, str]:  # noqa: ARG002
         """Words for a terminal, a picture for a notebook; deterministic."""

@@ -34,7 +34,8 @@ _WORDS = 0.26
 _PAD = 16.0
 """Free space in px between the extreme values and the ends of the axis."""
 _BETWEEN = 9.0
-"""Free space in px between two rows."""
+_CLOSE = 4.0
+"""Free space in px between two rows, and where there are many."""
 _LINES = 6
 _MANY = 9
 """From so many rows on they are kept low, so that the figure fits a page."""
@@ -48,6 +49,7 @@ def lay_out_strip(strip: Strip, *, width: float | None = None, height: float | N
     """
     canvas = max(width or NATURAL, _LEAST)
     frame = _frame(strip, canvas)
+    gap = _CLOSE if frame.low else _BETWEEN
     texts = list(paragraph(as_rich(strip.title), "title", canvas - 2 * MARGIN, lines=4, bold=True)
                  .at(Rect(MARGIN, 10, 0, 0)))  # fmt: skip
     top = y = texts[-1].y + texts[-1].h + 12 if texts else 10.0
@@ -57,15 +59,15 @@ def lay_out_strip(strip: Strip, *, width: float | None = None, height: float | N
     for group in strip.groups:
         heading = paragraph(as_rich(group.title), "heading", canvas - 2 * MARGIN, lines=3, bold=True)
         texts += heading.at(Rect(MARGIN, y, 0, 0))
-        y += heading.h + (6 if heading.h else 0)
+        y += heading.h + (gap / 2 if heading.h else 0)
         for row in group.rows:
             made = _row(row, frame, len(bands), y)
             texts += made.texts
             rules += made.rules
             points += made.points
             bands.append(replace(made.band, group=visible(plain(as_rich(group.title)))))
-            y = made.band.bottom + _BETWEEN
-        y += 5
+            y = made.band.bottom + gap
+        y += gap / 2
     axis_rules, axis_texts, y = _axis(strip, frame, y)
     texts += axis_texts
     plot = (frame.left, top, frame.right, axis_rules[0].points[0][1])
@@ -152,8 +154,8 @@ def _name(row: Row) -> Rich:
 
 def _row(row: Row, frame: _Frame, index: int, top: float) -> _Made:
     tags, boxes = _tags(row, frame)
-    whiskers = [(frame.ruler.at(dot.value - dot.spread), frame.ruler.at(dot.value + dot.spread))
-                for dot in row.dots if dot.spread is not None]  # fmt: skip
+    whiskers = tuple((frame.ruler.at(dot.value - dot.spread), frame.ruler.at(dot.value + dot.spread))
+                     for dot in row.dots if dot.spread is not None)  # fmt: skip
     placed = place(tags, whiskers, frame.left - 8, frame.right + 8, low=frame.low)
     name = _name(row)
     full = visible(row.label)
@@ -177,9 +179,10 @@ def _row(row: Row, frame: _Frame, index: int, top: float) -> _Made:
 
 def _tags(row: Row, frame: _Frame) -> tuple[tuple[Tag, ...], list[TextBox]]:
     tags, boxes = [], []
+    room = min(230.0, frame.right - frame.left)
     for dot in row.dots:
         if dot.look != "post":
-            text = shorten(visible_rich(join([dot.label, dot.caption], " ")), 230.0, SIZES["level"])
+            text = shorten(visible_rich(join([dot.label, dot.caption], " ")), room, SIZES["level"])
             box = line_box(0, 0, text, "level")
             boxes.append(box)
             tags.append(Tag(frame.ruler.at(dot.value), box.w, box.h))
@@ -237,7 +240,7 @@ def _values(marks: Iterable[tuple[float, str]]) -> list[float]:
 def _axis(strip: Strip, frame: _Frame, y: float) -> tuple[list[Rule], list[TextBox], float]:
     """The axis below the rows with its ticks and its title, and where the figure goes on."""
     rules = [Rule(((frame.left, y), (frame.right, y)), 1.0)]
-    texts = []
+    texts: list[TextBox] = []
     for value, text in frame.marks:
         x = frame.ruler.at(value)
         rules.append(Rule(((x, y), (x, y + 5)), 1.0))
@@ -253,7 +256,8 @@ def _key(strip: Strip, canvas: float, y: float) -> tuple[list[Point], list[TextB
     """A sample of every form that is used, with its meaning, in reading order."""
     used = {dot.look for row in strip.rows for dot in row.dots}
     limits = {dot.look for row in strip.rows for dot in row.dots if not dot.reached}
-    points, texts = [], []
+    points: list[Point] = []
+    texts: list[TextBox] = []
     x, line = MARGIN, SIZES["note"] * LINE + 5
     for look, meaning in strip.key:
         if look not in used:
@@ -265,5 +269,5 @@ def _key(strip: Strip, canvas: float, y: float) -> tuple[list[Point], list[TextB
         texts += block.at(Rect(x + 22, y, 0, 0))
         x += 22 + block.w + 20
         if len(block.texts) > 1:
-            x, y = MARGIN, y + block.h
-    return points, texts, y + (line + 4 if points else 0)
+            x, y = MARGIN, y + block.h + 5
+    return points, texts, y + ((line if x > MARGIN else 0) + 4 if points else 0)

@@ -11,7 +11,7 @@ from dataclasses import dataclass
 from fractions import Fraction
 from typing import Literal
 
-from routeheat.chem.row import Row
+from routeheat.chem.row import Row, Rows
 from routeheat.errors import RouteheatError, UnknownName
 
 _WIDEN = re.compile(r'([0-9]{1,6}(?:\.[0-9]{1,6})?)\s*(?:"([^"]*)"|(.*))')
@@ -32,12 +32,13 @@ class Choice:
     def text(self) -> str:
         """In words, for notes."""
         reason = f": {self.reason}" if self.reason else ", no reason given"
+        said = f": {self.reason}" if self.reason else ""
         on = f" (typed at {self.label})" if self.label else ""
         return {
             "accept": f"the contradiction is accepted{on}{reason}",
             "exclude": f"{self.label} is excluded{reason}",
             "widen": f"the own uncertainty of {self.label} is multiplied by {float(self.factor):g}{reason}",
-            "class": f"rows that state no uncertainty take part with u = {float(self.factor):g} kJ/mol",
+            "class": f"rows that state no uncertainty take part with u = {float(self.factor):g} kJ/mol{said}",
         }[self.kind]
 
 
@@ -49,7 +50,7 @@ def choices(
     exclude: Mapping[str, str],
     widen: Mapping[str, float],
 ) -> tuple[Choice, ...]:
-    """All decisions, those of the call first; a row's key gives way to the call.
+    """All decisions, those of the call first; what the sheet says, of a row or of a class, gives way to the call.
 
     Raises :class:`~routeheat.errors.RouteheatError` for a row that does not exist, an empty reason to accept, and a
     factor or an uncertainty that is not positive.
@@ -58,19 +59,22 @@ def choices(
         if label not in known:
             raise UnknownName("row", label, known)
     found: list[Choice] = []
+    typed = known.unstated if isinstance(known, Rows) else None
     if unstated is not None:
         found.append(Choice("class", factor=_positive(unstated, "the uncertainty of a class")))
+    elif typed is not None:
+        found.append(Choice("class", "", typed.reason, _positive(typed.kj_per_mol, "the uncertainty of a class")))
     if accept is not None:
         found.append(_accepted("", accept))
     else:
-        found += [_accepted(label, str(typed)) for label, typed in _typed(known, "accept")]
+        found += [_accepted(label, str(value)) for label, value in _typed(known, "accept")]
     found += [Choice("exclude", label, reason.strip()) for label, reason in exclude.items()]
-    found += [Choice("exclude", label, str(typed)) for label, typed in _typed(known, "exclude") if label not in exclude]
+    found += [Choice("exclude", label, str(value)) for label, value in _typed(known, "exclude") if label not in exclude]
     found += [Choice("widen", label, "", _positive(by, f"the factor on {label}")) for label, by in widen.items()]
-    for label, typed in _typed(known, "widen"):
-        match = _WIDEN.fullmatch(str(typed).strip())
+    for label, value in _typed(known, "widen"):
+        match = _WIDEN.fullmatch(str(value).strip())
         if match is None:
-            raise RouteheatError(f'{label}: widen {str(typed)[:60]} is not read; type widen 2 "reason"')
+            raise RouteheatError(f'{label}: widen {str(value)[:60]} is not read; type widen 2 "reason"')
         if label not in widen:
             factor = _positive(Fraction(match[1]), f"the factor on {label}")
             found.append(Choice("widen", label, match[2] or match[3] or "", factor))

@@ -251,7 +251,7 @@ def _in_own_order(rows: Sequence[Row]) -> list[Row]:
         text = texts[row.label]
         if shared[text] == 1:
             return (text,)
-        heat = row.heat.text if row.heat is not None else ""
+        heat = row.heat.typed if row.heat is not None else ""
         return text, heat, row.source, natural(row.label), row.label
 
     return sorted(rows, key=key)

@@ -1,6 +1,7 @@
 """A combination as a chemist checks it: the ledger of species, the table of rows, the ladder of the two ways.
 
-May import: :mod:`routeheat.chem`, :mod:`routeheat.present`.
+May import: :mod:`routeheat.hess.contained`, :mod:`routeheat.hess.warming`, :mod:`routeheat.chem`,
+:mod:`routeheat.present`.
 """
 
 from __future__ import annotations
@@ -13,6 +14,8 @@ from routeheat.chem.balance import imbalance_text
 from routeheat.chem.heat import HeatSum
 from routeheat.chem.reaction import Reaction, Term, add_net
 from routeheat.chem.row import Row
+from routeheat.hess.contained import double_counting
+from routeheat.hess.warming import temperature_warning
 from routeheat.present.ladder import Arrow, Ladder
 from routeheat.present.ladder import Column as Chain
 from routeheat.present.markup import Rich, Run, join
@@ -167,10 +170,11 @@ def _spread(level: HeatSum) -> float | None:
 
 def _details(row: Row, c: Fraction, part: HeatSum) -> tuple[tuple[str, str], ...]:
     return (
-        ("as typed", row.heat.text if row.heat is not None else ""),
+        ("as typed", row.heat.typed if row.heat is not None else ""),
         ("coefficient", fraction(c)),
         ("contribution", str(part)),
         ("source", row.source or "not stated"),
+        *((("estimated", "yes"),) if row.estimated else ()),
     )
 
 
@@ -184,10 +188,10 @@ def _notes(target: Reaction, terms: Terms, heat: HeatSum) -> tuple[str, ...]:
         if reaction.unchecked:
             listed = ", ".join(species.text for species in reaction.unchecked)
             notes.append(f"{label}: balance not checked, formula of {listed} not known")
-    if len({row.temperature for row, _ in terms}) > 1:
-        listed = ", ".join(f"{row.label} {number(float(row.temperature), 2)} K" for row, _ in terms)
-        notes.append(f"the heats hold at different temperatures and are added as they are: {listed}")
-    return tuple(notes)
+    notes += [remark for row, _ in terms for remark in row.remarks]
+    notes += double_counting(terms)
+    warning = temperature_warning(terms)
+    return (*notes, warning) if warning else tuple(notes)
 
 
 def _slug(label: str) -> str:

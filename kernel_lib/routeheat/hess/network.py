@@ -20,6 +20,7 @@ from routeheat.errors import RouteheatError
 from routeheat.hess.numbering import Numbering
 from routeheat.notation.quantity import COVERAGE_FACTORS
 
+ESTIMATED = "it is an estimate: it neither checks measured heats nor is adjusted to them"
 NOT_STATED = "its uncertainty is not stated: give one for all such rows as a class"
 _NUMBER = r"[0-9]{1,6}(?:\.[0-9]{1,6})?"
 _COMPONENT = re.compile(
@@ -115,7 +116,7 @@ def network(
     widen: Mapping[str, Fraction] | None = None,
     exclude: Mapping[str, str] | None = None,
 ) -> Network:
-    """The network of all rows with a number for a heat and a stated uncertainty.
+    """The network of all rows with a measured number for a heat and a stated uncertainty.
 
     ``unstated`` is the standard uncertainty in kJ/mol of rows that state none; without it they do not take part.
     ``widen`` multiplies own standard uncertainties, ``exclude`` leaves rows out.
@@ -154,6 +155,8 @@ def _heat(row: Row, k: float, unstated: Fraction | None, factor: Fraction) -> He
         return "no heat typed"
     if row.heat.amount is None:
         return f"its heat is the unknown {row.heat.symbol}"
+    if row.estimated:
+        return ESTIMATED
     try:
         datum = row.datum
         assert datum is not None

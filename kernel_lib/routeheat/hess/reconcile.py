@@ -29,7 +29,7 @@ from routeheat.hess.heating import HeatCapacities
 from routeheat.hess.ledger import sum_text
 from routeheat.hess.network import Network, network
 from routeheat.hess.shortest import short_cycles
-from routeheat.hess.temperature import temperature_warning
+from routeheat.hess.warming import temperature_warning
 from routeheat.present.numbers import reading
 from routeheat.present.show import Shown
 from routeheat.present.table import Table
@@ -208,7 +208,8 @@ def reconcile(
 ) -> Reconciled:
     """All known rows adjusted to each other.
 
-    ``unstated``: standard uncertainty in kJ/mol for all rows that state none; without it they do not take part.
+    ``unstated``: standard uncertainty in kJ/mol for all rows that state none; without it, and without a line
+    ``unstated u = … "reason"`` in the sheet, they do not take part.
     ``accept``: reason for which adjusted heats are wanted although the rows contradict each other (p < 0.01).
     ``exclude``: reason by label; ``widen``: factor on the own standard uncertainty by label. The keys ``accept``,
     ``exclude`` and ``widen`` of the rows say the same. ``heat_capacities`` size the effect of rows that hold at
@@ -223,7 +224,7 @@ def reconcile(
     net = network(
         known,
         k=k,
-        unstated=None if unstated is None else Fraction(repr(float(unstated))),
+        unstated=next((choice.factor for choice in made if choice.kind == "class"), None),
         widen={choice.label: choice.factor for choice in made if choice.kind == "widen"},
         exclude={choice.label: choice.reason for choice in made if choice.kind == "exclude"},
     )

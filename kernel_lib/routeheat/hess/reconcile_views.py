@@ -60,7 +60,7 @@ def table(item: Reconciled) -> Table:
     lines: list[tuple[Cell, ...]] = []
     for label, row in item.known.items():
         if label not in item.network.rows:
-            heat = row.heat.text if row.heat is not None else "no heat typed"
+            heat = row.heat.typed if row.heat is not None else "no heat typed"
             lines.append((label, row.reaction.rich, heat, None, None, item.network.left_out[label]))
             continue
         residual = item.residuals[label]

@@ -9,7 +9,6 @@ May import: the other modules of :mod:`routeheat.hess`, :mod:`routeheat.known`, 
 
 from __future__ import annotations
 
-import math
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
@@ -22,14 +21,14 @@ from routeheat.chem.row import REFERENCE_TEMPERATURE, Row
 from routeheat.chem.step import Step
 from routeheat.hess import temperature_views
 from routeheat.hess.combination import Combination
-from routeheat.hess.heating import Crossing, HeatCapacities, Part, Transition, follow, merged
-from routeheat.hess.tabulated import tabulated
+from routeheat.hess.heating import Crossing, HeatCapacities, Part, Transition
+from routeheat.hess.warming import Ways, bound_of, follow_all, problems_of, warming_of, ways_of
 from routeheat.present.numbers import number
 from routeheat.present.show import Shown
 from routeheat.present.table import Table
 from routeheat.units import KELVIN
 
-__all__ = ["Corrected", "Crossing", "HeatCapacities", "Part", "Transition", "at_temperature", "temperature_warning"]
+__all__ = ["Corrected", "Crossing", "HeatCapacities", "Part", "Transition", "at_temperature"]
 NO_UNCERTAINTY = "the correction counts as exact: no uncertainty of the heat capacities is given"
 
 
@@ -96,8 +95,8 @@ def at_temperature(
     """
     name, ways, heat, reason = _read(subject, of, None if start is None else _kelvin(start), k)
     end = _kelvin(to)
-    parts, crossed = _follow_all(ways, end, heat_capacities, transitions)
-    problems = _problems(parts)
+    parts, crossed = follow_all(ways, end, heat_capacities, transitions)
+    problems = problems_of(parts)
     correction = None
     if ways and not problems:
         correction = _correction(name, parts, crossed, end, u, k)
@@ -115,44 +114,10 @@ def at_temperature(
         correction=correction,
         parts=parts,
         crossed=crossed,
-        bound=_bound(parts, crossed) if problems else None,
+        bound=bound_of(parts, crossed) if problems else None,
         notes=tuple(notes),
         k=k,
     )
-
-
-def temperature_warning(
-    terms: Iterable[tuple[Row, Fraction]],
-    *,
-    heat_capacities: HeatCapacities | None = None,
-    transitions: Iterable[Transition] | None = None,
-) -> str:
-    """What a reader must know when the rows of one sum hold at different temperatures, with the size of the effect.
-
-    The size is what bringing the rows that hold elsewhere to 25 °C (or, without a row there, to the temperature of
-    the first row) would change the sum by. Empty when all rows hold at one temperature.
-    """
-    listed = list(terms)
-    temperatures = list(dict.fromkeys(row.temperature for row, _ in listed))
-    if len(temperatures) < 2:
-        return ""
-    common = REFERENCE_TEMPERATURE if REFERENCE_TEMPERATURE in temperatures else temperatures[0]
-    words = []
-    for kelvin in temperatures:
-        labels = ", ".join(row.label for row, _ in listed if row.temperature == kelvin)
-        words.append(f"{labels} {number(float(kelvin), 2)} K")
-    ways = _ways((row.reaction, c, row.temperature) for row, c in listed if row.temperature != common)
-    parts, crossed = _follow_all(ways, common, heat_capacities, transitions)
-    problems = _problems(parts)
-    if problems:
-        size = f"{temperature_views.bound_words(_bound(parts, crossed))} ({problems})"
-    else:
-        size = f"{number(float(_correction('', parts, crossed, common, None, 2.0).exact), 2)} kJ/mol"
-    return (f"the heats hold at different temperatures ({'; '.join(words)}) and are added as they are; bringing all "
-            f"to {number(float(common), 2)} K would change the sum by {size}")
-
-
-_Ways = list[tuple[Reaction, Fraction]]
 
 
 def _kelvin(typed: Measured | Fraction | float) -> Fraction:
@@ -163,7 +128,7 @@ def _kelvin(typed: Measured | Fraction | float) -> Fraction:
 
 def _read(
     subject: Row | Step | Combination | Reaction | HeatSum, of: Reaction | None, start: Fraction | None, k: float
-) -> tuple[str, _Ways, HeatSum | None, str]:
+) -> tuple[str, Ways, HeatSum | None, str]:
     """What is corrected: its name, reactions with the temperature each starts from, its heat, and what is missing."""
     if isinstance(subject, HeatSum):
         if of is None:
@@ -172,7 +137,7 @@ def _read(
     if isinstance(subject, Reaction):
         return subject.text, [(subject, start or REFERENCE_TEMPERATURE)], None, "no heat given"
     if isinstance(subject, Combination):
-        ways = _ways((row.reaction, c, start or row.temperature) for row, c in subject.terms)
+        ways = ways_of((row.reaction, c, start or row.temperature) for row, c in subject.terms)
         return subject.name, ways, subject.heat, ""
     row = subject.row if isinstance(subject, Step) else subject
     heat = row.heat_sum(k)
@@ -184,48 +149,16 @@ def _read(
     return row.label, [(row.reaction, begin)], heat, "" if heat is not None else "no heat typed"
 
 
-def _ways(rows: Iterable[tuple[Reaction, Fraction, Fraction]]) -> _Ways:
-    """One net reaction per starting temperature, so that what cancels needs no heat capacity."""
-    groups: dict[Fraction, list[tuple[Fraction, Reaction]]] = {}
-    for reaction, c, begin in rows:
-        groups.setdefault(begin, []).append((c, reaction))
-    return [(Reaction.from_net(add_net(group)), begin) for begin, group in groups.items()]
-
-
-def _follow_all(
-    ways: _Ways, end: Fraction, capacities: HeatCapacities | None, transitions: Iterable[Transition] | None
-) -> tuple[tuple[Part, ...], tuple[Crossing, ...]]:
-    if capacities is None or transitions is None:
-        table = tabulated(dict.fromkeys(species for reaction, _ in ways for species in reaction.species))
-        capacities = table[0] if capacities is None else capacities
-        transitions = table[1] if transitions is None else transitions
-    listed = tuple(transitions)
-    found = [follow(reaction, begin, end, capacities, listed) for reaction, begin in ways]
-    return tuple(part for parts, _ in found for part in parts), merged(item for _, crossed in found for item in crossed)
-
-
 def _one(part: Part) -> Reaction:
     return Reaction((), ((Fraction(1), part.end),))
-
-
-def _problems(parts: Iterable[Part]) -> str:
-    return "; ".join(dict.fromkeys(part.problem for part in parts if part.problem))
 
 
 def _correction(
     name: str, parts: Sequence[Part], crossed: Sequence[Crossing], end: Fraction, u: float | None, k: float
 ) -> HeatSum:
-    # a billionth of a kJ/mol is far below what any heat capacity is known to
-    warming = Fraction(f"{math.fsum(part.warming for part in parts):.9f}")
+    warming = warming_of(parts)
     change = HeatSum(warming, (), k)
     if u is not None:
         label = f"correction of {name} to {number(float(end), 2)} K"
         change = HeatSum.of(Datum(label, value=warming, u=Fraction(repr(float(u))), source="∫ ΔCp dT"), k=k)
     return HeatSum.total(((Fraction(1), change), *((Fraction(1), item.heat) for item in crossed)), k)
-
-
-def _bound(parts: Sequence[Part], crossed: Sequence[Crossing]) -> tuple[float, float] | None:
-    known = math.fsum(part.warming for part in parts) + sum(float(item.heat.exact) for item in crossed)
-    low = known + sum(part.open[0] for part in parts)
-    high = known + sum(part.open[1] for part in parts)
-    return None if math.isinf(low) and math.isinf(high) else (low, high)

@@ -12,9 +12,7 @@ from dataclasses import dataclass
 from fractions import Fraction
 from functools import cache
 
-from routeheat.chem.balance import reference_species
 from routeheat.chem.formula import Formula, read_formula
-from routeheat.chem.reaction import Reaction
 from routeheat.chem.route import Declaration
 from routeheat.chem.row import Row
 from routeheat.chem.species import Species
@@ -28,8 +26,6 @@ NEAR = 8
 """How many near names are listed at most."""
 
 _CAS = re.compile(r"[0-9]{2,7}-[0-9]{2}-[0-9]")
-_HYDROGEN = Species("H2", "g", "", read_formula("H2"))
-_PROTON = Species("H^+", "aq", "", read_formula("H^+"))
 
 
 @dataclass(frozen=True, slots=True)
@@ -239,28 +235,7 @@ def _declaration(line: KnownSpecies) -> Declaration:
 
 
 def _equation(line: KnownSpecies) -> str:
-    return ion_formation(line).text if line.formula.charge else f"formation of {_written(line)}"
-
-
-def ion_formation(line: KnownSpecies) -> Reaction:
-    """Formation of an aqueous ion on the scale H^+(aq) = 0, balanced in atoms and charge.
-
-    Reference states and H^+(aq) are on the side where they are needed: ``Na(s) + H^+(aq) -> Na^+(aq) + 1/2 H2(g)``.
-    """
-    protons = Fraction(-line.formula.charge)
-    net = {Species(line.formula.text, line.phase, line.form, line.formula): Fraction(1)}
-    hydrogen = protons
-    for symbol, count in line.formula.counts:
-        if symbol == "H":
-            hydrogen += count
-            continue
-        reference = reference_species(symbol)
-        assert reference is not None
-        assert reference.formula is not None
-        net[reference] = -count / reference.formula.composition[symbol]
-    net[_HYDROGEN] = -hydrogen / 2
-    net[_PROTON] = protons
-    return Reaction.from_net(net)
+    return f"formation of {_written(line)}"
 
 
 def _composition(text: str) -> tuple[dict[str, Fraction], int] | None:

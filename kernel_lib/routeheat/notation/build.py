@@ -2,22 +2,26 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import replace
 from fractions import Fraction
 
 from routeheat.chem.route import Sheet
-from routeheat.chem.row import Row, Rows
+from routeheat.chem.row import Row, Rows, Unstated
+from routeheat.chem.step import Step
 from routeheat.errors import Fault
+from routeheat.notation.analogues import with_analogue
 from routeheat.notation.context import Context
 from routeheat.notation.declarations import read_declarations
 from routeheat.notation.grammar import SpeciesReader
 from routeheat.notation.guesses import Guesses
 from routeheat.notation.pasted import as_typed
-from routeheat.notation.quantity import read_coverage
+from routeheat.notation.quantity import read_coverage, read_quantity, require_dimension
 from routeheat.notation.routes import NewLabel, build_routes, read_drafts, require_phases
 from routeheat.notation.rows import ReadRow, read_row
 from routeheat.notation.sections import Entry, Section, read_sections, too_large
-from routeheat.notation.tokens import Trouble
+from routeheat.notation.tokens import Piece, Trouble
+from routeheat.units import KJ_PER_MOL
 
 DEFAULT_K = Fraction(2)
 """Coverage factor of a ``±`` when neither the number nor the sheet says one."""
@@ -40,20 +44,28 @@ def build_sheet(text: str) -> tuple[Sheet, tuple[Fault, ...]]:
     declared = read_declarations(sections, declaring)
     context = Context(
         SpeciesReader(declared, guesses), coverage or DEFAULT_K, lines.faults,
-        assumed=declaring.assumed, unused=declaring.unused,
+        assumed=declaring.assumed,
     )  # fmt: skip
     new_label = _labels(context)
     k = float(coverage or DEFAULT_K)
-    known = Rows(_known(sections, context, new_label), k)
+    unstated = _unstated(sections, context)
+    rows = _known(sections, context, new_label)
     targets = _targets(sections, context, new_label)
     drafts = read_drafts(sections, context, new_label)
+    by_label = {row.label: row for row in (*rows, *(step.row for draft in drafts for step in draft.own))}
+    known = Rows((with_analogue(row, by_label, context) for row in rows), k, unstated)
+    for draft in drafts:
+        draft.items = [
+            replace(item, row=with_analogue(item.row, by_label, context)) if isinstance(item, Step) else item
+            for item in draft.items
+        ]
     routes = build_routes(drafts, known, k, context)
     context.faults.extend(context.reader.notices)
     _notices(context, coverage)
     faults = [*as_typed(context.faults, lines.origins), *lines.controls]
     ordered = tuple(sorted(faults, key=lambda fault: (fault.line, fault.column, fault.severity)))
     notices = tuple(fault for fault in ordered if fault.severity == "notice")
-    return Sheet(coverage, declared, known, targets, routes, notices), ordered
+    return Sheet(coverage, declared, known, targets, routes, notices, unstated), ordered
 
 
 def _coverage(sections: list[Section], faults: list[Fault]) -> Fraction | None:
@@ -73,15 +85,47 @@ def _coverage(sections: list[Section], faults: list[Fault]) -> Fraction | None:
     return found
 
 
+_UNSTATED = re.compile(r'(?:u\s*=?\s*)?(?P<u>[^"]*[^"\s])\s*"(?P<reason>[^"]*)"')
+_UNSTATED_LIKE = 'like unstated u = 5 kJ/mol "textbook values of that time"'
+
+
+def _unstated(sections: list[Section], context: Context) -> Unstated | None:
+    """The line for rows that state no uncertainty."""
+    found: Unstated | None = None
+    for section in sections:
+        if section.word != "unstated":
+            continue
+        for entry in section.entries:
+            context.faults.append(entry.head.fault("nothing stands below the unstated line", "start a section"))
+        if found is not None:
+            message = "a second line for rows that state no uncertainty"
+            context.faults.append(section.header.fault(message, "one holds for the whole sheet"))
+            continue
+        found = context.attempt(lambda piece=section.header: _read_unstated(piece, context))  # type: ignore[misc]
+    return found
+
+
+def _read_unstated(piece: Piece, context: Context) -> Unstated:
+    match = _UNSTATED.fullmatch(piece.text)
+    if match is None:
+        piece.refuse("an uncertainty for rows that state none, and the reason for it, are expected", _UNSTATED_LIKE)
+    place = piece.part(match.start("u"), match.end("u"))
+    quantity = read_quantity(place, context.sheet_k, "5 kJ/mol")
+    u = require_dimension(quantity, KJ_PER_MOL, _UNSTATED_LIKE)
+    if quantity.basis is not None or quantity.temperature is not None or u.spread is not None:
+        place.refuse("one standard uncertainty for all such rows is expected", _UNSTATED_LIKE)
+    if u.value <= 0:
+        place.refuse("an uncertainty is more than zero", _UNSTATED_LIKE)
+    if not match["reason"].strip():
+        piece.refuse("the reason is missing", _UNSTATED_LIKE)
+    return Unstated(u, match["reason"].strip())
+
+
 def _notices(context: Context, coverage: Fraction | None) -> None:
     if context.assumed is not None and coverage is None:
         message = "± without a coverage factor is read as k = 2"
         hint = "say it once for the sheet: uncertainty k = 2"
         context.faults.append(context.assumed.fault(message, hint, notice=True))
-    if context.unused:
-        first = next(iter(context.unused.values()))
-        message = f"kept, but not used yet: {', '.join(context.unused)}"
-        context.faults.append(first.fault(message, notice=True))
 
 
 def _labels(context: Context) -> NewLabel:

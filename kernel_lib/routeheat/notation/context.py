@@ -28,8 +28,8 @@ class Context:
     """The reaction of the row being read, for keys that name one of its species."""
     assumed: Piece | None = None
     """The first number whose ``±`` took the coverage factor of the sheet."""
-    unused: dict[str, Piece] = field(default_factory=dict)
-    """First place of every key that nothing uses yet."""
+    analogues: dict[str, Piece] = field(default_factory=dict)
+    """Where each heat that is taken from another row was typed, by the label of the row that takes it."""
 
     @property
     def guesses(self) -> Guesses:

@@ -21,7 +21,7 @@ from routeheat.units import (
 )
 
 Where = Literal["species", "known", "target", "step"]
-Value = Literal["heat", "measured", "text", "flag", "species", "equivalents", "recycle", "label", "loss"]
+Value = Literal["heat", "analogue", "measured", "text", "flag", "species", "equivalents", "recycle", "label", "loss"]
 Bounds = Literal["", "positive", "share", "yield", "temperature"]
 """``share`` is 0 to 100 %, ``yield`` the same without 0, ``temperature`` lies above absolute zero."""
 
@@ -36,7 +36,7 @@ class Key:
     where: frozenset[Where]
     """Kinds of entry it may stand in."""
     feeds: str
-    """What uses it; empty while nothing does: it is then kept and shown as not used yet."""
+    """What uses it."""
     unit: Unit = PURE
     """For ``measured``: a unit of the right dimension."""
     example: str = ""
@@ -73,6 +73,11 @@ KEYS: tuple[Key, ...] = (
          example="M 250 g/mol", bounds="positive"),
     _key("dH", "heat", "known step", "every heat", unit=KJ_PER_MOL, example="dH -145 ± 8 kJ/mol",
          spellings=("ΔH", "ΔrH")),
+    _key("dU", "heat", "known step", "every heat, converted to constant pressure", unit=KJ_PER_MOL,
+         example="dU -3225.63 ± 0.18 kJ/mol", spellings=("ΔU", "ΔcU", "ΔrU")),
+    _key("Q", "heat", "known step", "every heat, from a calorimeter run", unit=KJ_PER_MOL,
+         example="Q -48.8 kJ for 3.12 g of C6H12O6(s)"),
+    _key("like", "analogue", "known step", "every heat, as an estimate", unit=KJ_PER_MOL, example="like A1 ± 25"),
     _key("source", "text", "known step", "tables and reports", example='source "laboratory notebook 12"'),
     _key("note", "text", "species known target step", "tables", example='note "seeded"'),
     _key("yield", "measured", "step", "extents", example="yield 96 ± 2 %", bounds="yield"),
@@ -105,8 +110,8 @@ KEYS: tuple[Key, ...] = (
     _key("fed", "species", "step", "accumulation", example="fed HNO3(aq)"),
     _key("fedpart", "measured", "step", "accumulation", example="fedpart 20 %", bounds="share"),
     _key("Xac", "measured", "step", "MTSR", example="Xac 0.30", bounds="share"),
-    _key("k1", "measured", "step", "accumulation", unit=read_unit("h^-1"), example="k1 0.5 h^-1", bounds="positive"),
-    _key("k2", "measured", "step", "accumulation", unit=read_unit("kg/(mol h)"), example="k2 20 kg/(mol h)",
+    _key("rate1", "measured", "step", "accumulation", unit=read_unit("h^-1"), example="rate1 0.5 h^-1", bounds="positive"),
+    _key("rate2", "measured", "step", "accumulation", unit=read_unit("kg/(mol h)"), example="rate2 20 kg/(mol h)",
          bounds="positive"),
     _key("dTad", "measured", "step", "MTSR", unit=KELVIN, example="dTad 120 ± 6 K", hint="a rise, like dTad 120 K"),
     _key("MTSR", "measured", "step", "the criticality class", unit=CELSIUS, example="MTSR 60 ± 3 degC",
@@ -117,7 +122,7 @@ KEYS: tuple[Key, ...] = (
          bounds="temperature"),
     _key("ambient", "measured", "step", "the criticality class", unit=CELSIUS, example="ambient 30 degC",
          bounds="temperature"),
-    _key("estimated", "text", "step", "the word provisional", example="estimated TD24, cp"),
+    _key("estimated", "text", "known step", "the words estimated and provisional", example="estimated dH, TD24"),
     _key("onset", "measured", "species step", "TD24, screening", unit=CELSIUS, example="onset 180 degC",
          bounds="temperature"),
     _key("detection", "measured", "step", "TD24", unit=read_unit("W/kg"), example="detection 10 W/kg",
@@ -171,6 +176,11 @@ KEYS: tuple[Key, ...] = (
     _key("exclude", "text", "known", "reconciliation", example='exclude "reason"'),
     _key("widen", "text", "known", "reconciliation", example='widen 2 "reason"'),
 )
+
+HEATS: tuple[str, ...] = ("dH", "dU", "Q", "like")
+"""Keys that say the heat of a row; a row has one of them at most."""
+AS_TYPED: frozenset[str] = frozenset(["shared", "widen"])
+"""Keys whose text holds a quotation among other things, and is kept as typed."""
 
 _BY_SPELLING = {spelling: key for key in KEYS for spelling in (key.name, *key.spellings)}
 _BY_LETTERS = {spelling.casefold(): key for spelling, key in _BY_SPELLING.items()}

@@ -38,6 +38,11 @@ class Draft:
     """Own steps, and the label pieces of ``use`` lines, in working order."""
 
     @property
+    def own(self) -> list[Step]:
+        """Steps that this route defines itself."""
+        return [item for item in self.items if isinstance(item, Step)]
+
+    @property
     def labels(self) -> set[str]:
         """Labels of everything that runs in the route."""
         return {item.label if isinstance(item, Step) else item.text for item in self.items}
@@ -94,7 +99,7 @@ def _items(section: Section, context: Context, new_label: NewLabel) -> list[Step
         read = read_row(entry, context, "step")
         if read is None or not new_label(read, entry):
             continue
-        if read.row.heat is None and read.clean and "dH" not in read.keyed.places:
+        if read.row.heat is None and read.clean:
             require_phases(read, context, "a step without a heat of its own")
         items.append(as_step(read.row, read.keyed))
     return items

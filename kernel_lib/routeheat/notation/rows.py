@@ -15,7 +15,7 @@ from routeheat.chem.row import Heat, Row
 from routeheat.chem.species import Species
 from routeheat.chem.step import OPERATIONS, Recycle, Step
 from routeheat.notation.context import Context
-from routeheat.notation.keys import Key, Where, find_key, key_order, names_in, nearest_key
+from routeheat.notation.keys import HEATS, Key, Where, find_key, key_order, names_in, nearest_key
 from routeheat.notation.named import read_named
 from routeheat.notation.sections import Entry, parts
 from routeheat.notation.tokens import LABEL, Piece, Trouble
@@ -24,7 +24,7 @@ from routeheat.notation.values import read_value
 _KIND_OF_ENTRY: dict[Where, str] = {
     "species": "a species", "known": "a known row", "target": "a target", "step": "a step",
 }  # fmt: skip
-_USUAL_SIGN = {"combustion": -1, "vaporisation": 1, "fusion": 1, "sublimation": 1}
+_USUAL_SIGN = {"combustion": -1, "neutralisation": -1, "vaporisation": 1, "fusion": 1, "sublimation": 1}
 
 
 @dataclass(slots=True)
@@ -39,6 +39,13 @@ class Keyed:
     def measured(self, name: str) -> Measured | None:
         """Value of a measured key, or ``None``."""
         return cast("Measured | None", self.values.get(name))
+
+    def heat(self) -> tuple[Heat | None, Piece | None]:
+        """The heat of the entry and the place of its key, whichever key it is."""
+        for name in HEATS:
+            if name in self.places:
+                return cast("Heat | None", self.values.get(name)), self.places[name]
+        return None, None
 
     def text(self, name: str) -> str:
         """Value of a text key, or an empty text."""
@@ -82,10 +89,11 @@ def read_row(entry: Entry, context: Context, where: Where) -> ReadRow | None:
     if read is not None:
         reaction, kind, subject = read
         _check_balance(reaction, body, context)
-        heat = cast("Heat | None", keyed.values.get("dH"))
-        if heat is not None and heat.amount is not None and heat.amount.value * _USUAL_SIGN.get(kind, 0) < 0:
-            usual = "exothermic: dH is negative" if _USUAL_SIGN[kind] < 0 else "endothermic: dH is positive"
-            context.faults.append(keyed.places["dH"].fault(f"is the sign right? {kind} is {usual}", notice=True))
+        heat, place = keyed.heat()
+        if heat is not None and place is not None:
+            _check_heat(heat, place, reaction, kind, where, context)
+            if heat.analogue:
+                context.analogues[label] = place
         settings = keyed.settings(*_OF_ROWS)
         row = Row(label, reaction, heat, kind, subject, keyed.text("source"), settings, entry.head.line)
         clean = all(fault.severity == "notice" for fault in context.faults[before:])
@@ -96,8 +104,27 @@ def read_row(entry: Entry, context: Context, where: Where) -> ReadRow | None:
     return result
 
 
+def _check_heat(
+    heat: Heat, place: Piece, reaction: Reaction, kind: str, where: Where, context: Context
+) -> None:
+    """A sign that is unusual for the kind of row, and a ΔU that cannot become a ΔH."""
+    if heat.amount is not None and heat.amount.value * _USUAL_SIGN.get(kind, 0) < 0:
+        usual = "exothermic" if _USUAL_SIGN[kind] < 0 else "endothermic"
+        sign = f"{heat.key} is {'negative' if _USUAL_SIGN[kind] < 0 else 'positive'}"
+        context.faults.append(place.fault(f"is the sign right? {kind} is {usual}: {sign}", notice=True))
+    if heat.key != "dU":
+        return
+    mixed = [species.text for species in reaction.net if species.in_mixture]
+    if mixed:
+        message = f"ΔU becomes ΔH by the change in moles of gas, but the phase of {mixed[0]} is not stated"
+        context.faults.append(place.fault(message, "state the phase of every species, or type dH"))
+    elif where == "step" and heat.temperature is None and reaction.gas_change:
+        message = "ΔU becomes ΔH at the temperature of the measurement, which is missing"
+        context.faults.append(place.fault(message, f"like dU {heat.text} at 25 degC"))
+
+
 _OF_ROWS = (
-    "dH", "source", "yield", "T", "conc", "cp", "product", "limiting", "side", "amount", "loss", *OPERATIONS,
+    *HEATS, "source", "yield", "T", "conc", "cp", "product", "limiting", "side", "amount", "loss", *OPERATIONS,
     "equilibrium",
 )  # fmt: skip
 """Keys with a place of their own in a row or a step."""
@@ -193,9 +220,10 @@ def _read_key(piece: Piece, keyed: Keyed, context: Context, where: Where) -> Non
         value = value.part(1).strip()
     if key.name in keyed.values:
         piece.refuse(f"{key.name} is typed twice for this entry", "keep one")
+    earlier = next((name for name in HEATS if name in keyed.places), None)
+    if key.name in HEATS and earlier is not None:
+        piece.refuse(f"a row has one heat, and {earlier} is typed already", f"keep {earlier} or {key.name}", 0, end)
     _take(key, read_value(key, value, context), piece, keyed)
-    if not key.feeds:
-        context.unused.setdefault(key.name, piece)
 
 
 def _refuse_key(piece: Piece, word: str, context: Context, where: Where) -> NoReturn:

@@ -7,19 +7,21 @@ from collections.abc import Callable
 from fractions import Fraction
 
 from routeheat.chem.measured import Measured
-from routeheat.chem.row import Heat
 from routeheat.chem.species import Species
 from routeheat.chem.step import Recycle
 from routeheat.notation.context import Context
-from routeheat.notation.keys import Key
+from routeheat.notation.heats import label_of, note_assumed, one_of_row, read_analogue, read_heat
+from routeheat.notation.keys import AS_TYPED, Key
 from routeheat.notation.quantity import Quantity, read_quantity, require_dimension
-from routeheat.notation.tokens import LABEL, Piece
-from routeheat.units import CELSIUS, KELVIN, KJ, KJ_PER_KG, KJ_PER_MOL, PURE, is_unit_symbol
+from routeheat.notation.tokens import Piece
+from routeheat.units import KELVIN, PURE
 
 LONGEST_QUOTE = 1000
 """Characters of a quoted text."""
 
-_LETTER = re.compile(r"[^\W\d_](?:_?[0-9]{1,3})?")
+_WIDEN = re.compile(r'(?!0+(?:\.0+)?\s*")[0-9]{1,6}(?:\.[0-9]{1,6})?\s*"[^"]*[^"\s][^"]*"')
+_REASONED = ("accept", "exclude")
+"""Keys whose text is the reason of a decision."""
 
 
 def read_value(key: Key, value: Piece, context: Context) -> object:
@@ -31,19 +33,13 @@ def _quantity(key: Key, value: Piece, context: Context) -> Quantity:
     return read_quantity(value, context.sheet_k, key.example.partition(" ")[2], context.reader.declared)
 
 
-def _note_assumed(quantity: Quantity, value: Piece, context: Context) -> None:
-    """Remember the first number whose ± took the coverage factor of the sheet."""
-    if quantity.assumed_k and context.assumed is None:
-        context.assumed = value
-
-
 def _measured(key: Key, value: Piece, context: Context) -> Measured:
     quantity = _quantity(key, value, context)
     if quantity.basis is not None or quantity.temperature is not None:
         value.refuse(f"{key.name} takes a number with a unit only", f"like {key.example}")
     measured = require_dimension(quantity, key.unit, key.hint or f"like {key.example}")
     _check_bounds(key, measured, value)
-    _note_assumed(quantity, value, context)
+    note_assumed(quantity, value, context)
     return measured
 
 
@@ -69,72 +65,17 @@ def _check_share(name: str, measured: Measured, value: Piece, example: str, *, z
                      f"or {float(share):g}")  # fmt: skip
 
 
-def _heat(key: Key, value: Piece, context: Context) -> Heat:
-    unknown = _unknown_heat(value, context)
-    if unknown is not None:
-        return unknown
-    quantity = _quantity(key, value, context)
-    dimension = quantity.measured.unit.dimension
-    if dimension == KJ_PER_KG.dimension and quantity.basis is None:
-        species = "a species" if context.reaction is None else next(iter(context.reaction.net), "a species")
-        hint = f"like {quantity.measured.unit.text} of {species}"
-        quantity.unit_piece.refuse("a heat per mass of what?", hint)
-    if dimension == KJ.dimension and quantity.basis is not None:
-        hint = "write kJ/mol of, or kJ/kg of"
-        quantity.unit_piece.refuse("a bare energy is per mole of reaction as written", hint)
-    if dimension not in (KJ.dimension, KJ_PER_KG.dimension):
-        require_dimension(quantity, KJ_PER_MOL, f"like {key.example}")
-    basis = None if quantity.basis is None else _one_of_row(quantity.basis, context)
-    at = None if quantity.temperature is None else _temperature(quantity.temperature, context)
-    heat = Heat(quantity.measured, basis, "", at)
-    if basis is not None and context.reaction is not None:
-        _check_basis(heat, quantity.basis or value, context)
-    _note_assumed(quantity, value, context)
-    return heat
-
-
-def _check_basis(heat: Heat, place: Piece, context: Context) -> None:
-    assert context.reaction is not None  # the caller has looked
-    try:
-        heat.factor(context.reaction)
-    except ValueError as problem:
-        place.refuse(str(problem), f"one of {', '.join(species.text for species in context.reaction.net)}")
-
-
-def _unknown_heat(value: Piece, context: Context) -> Heat | None:
-    """The letter of a heat that is not known; ``None`` when a number is typed."""
-    word, _, rest = value.text.partition(" ")
-    if not word or not word[0].isalpha():
-        return None
-    if is_unit_symbol(word.split("/")[0]) and word not in ("g", "h", "t", "s", "d", "m", "L", "K", "W"):
-        value.refuse("the number is missing before the unit", "like -145 ± 8 kJ/mol", 0, len(word))
-    at = re.match(r"\s*at\s+", rest)
-    if _LETTER.fullmatch(word) is None or (rest.strip() and at is None):
-        hint = "an unknown heat is one letter, like x or x1; leave dH out where nothing is known"
-        value.refuse("a number or one letter is expected here", hint)
-    tail = None if at is None else value.part(len(word) + 1 + at.end())
-    return Heat(None, None, word, None if tail is None else _temperature(tail, context))
-
-
-def _temperature(piece: Piece, context: Context) -> Measured:
-    quantity = read_quantity(piece, context.sheet_k, "25 degC, or 298.15 K")
-    if quantity.basis is not None or quantity.temperature is not None:
-        piece.refuse("a temperature is the last thing of a heat", "like kJ/mol of NB at 25 degC")
-    measured = require_dimension(quantity, CELSIUS, "like 25 degC, or 298.15 K")
-    if measured.to(KELVIN) <= 0:
-        piece.refuse(f"{measured.text} is not above absolute zero", "like 25 degC, or 298.15 K")
-    return measured
-
-
 def _text(key: Key, value: Piece, _context: Context) -> str:
     if not value.text:
         value.refuse(f"a value is missing behind {key.name}", f"like {key.example}")
     if value.text.count('"') % 2:
         place = value.text.rindex('"')
         value.refuse("this quotation is not closed", 'put " at its end', place)
-    text = value.text
-    if key.name != "shared":
-        text = _unquoted(value)
+    text = value.text if key.name in AS_TYPED else _unquoted(value)
+    if key.name in _REASONED and not text.strip():
+        value.refuse(f"{key.name} needs a reason", f"like {key.example}")
+    if key.name == "widen" and _WIDEN.fullmatch(text) is None:
+        value.refuse("by how much is the uncertainty widened, and why?", f"like {key.example}")
     if len(text) > LONGEST_QUOTE:
         value.refuse(f"a text of more than {LONGEST_QUOTE} characters", "shorten it")
     if key.name == "cas":
@@ -168,15 +109,10 @@ def _flag(key: Key, value: Piece, _context: Context) -> bool:
     return True
 
 
-def _one_of_row(piece: Piece, context: Context) -> Species:
-    """The species named, which a name without its state picks from the row."""
-    return context.reader.member(piece, () if context.reaction is None else context.reaction.species)
-
-
 def _species(key: Key, value: Piece, context: Context) -> Species:
     if not value.text:
         value.refuse(f"a species is missing behind {key.name}", f"like {key.example}")
-    return _one_of_row(value, context)
+    return one_of_row(value, context)
 
 
 def _equivalents(key: Key, value: Piece, context: Context) -> tuple[Species, Fraction]:
@@ -189,7 +125,7 @@ def _equivalents(key: Key, value: Piece, context: Context) -> tuple[Species, Fra
         value.refuse("equivalents are a plain number", f"like {key.example}", 0, match.end(1))
     if number.value <= 0:
         value.refuse("equivalents are more than zero", f"like {key.example}", 0, match.end(1))
-    return _one_of_row(value.part(match.end()), context), number.value
+    return one_of_row(value.part(match.end()), context), number.value
 
 
 def _recycle(key: Key, value: Piece, context: Context) -> Recycle:
@@ -201,22 +137,15 @@ def _recycle(key: Key, value: Piece, context: Context) -> Recycle:
     quantity = read_quantity(share, context.sheet_k, "90 %")
     part = require_dimension(quantity, PURE, "like 90 %")
     _check_share("the recycled part", part, share, "90 %", zero=False)
-    _note_assumed(quantity, share, context)
-    return Recycle(_one_of_row(value.part(0, place).strip(), context), _label(tail[1], value), part)
+    note_assumed(quantity, share, context)
+    return Recycle(one_of_row(value.part(0, place).strip(), context), label_of(tail[1], value), part)
 
 
 def _side(key: Key, value: Piece, _context: Context) -> str:
     match = re.fullmatch(r"of\s+(\S+)", value.text)
     if match is None:
         value.refuse("a side row of which step?", f"like {key.example}")
-    return _label(match[1], value)
-
-
-def _label(typed: str, value: Piece) -> str:
-    label = typed.strip("[]")
-    if LABEL.fullmatch(label) is None:
-        value.refuse(f"{typed[:40]} is no label of a step", "like A1")
-    return label
+    return label_of(match[1], value)
 
 
 def _loss(_key: Key, value: Piece, _context: Context) -> str:
@@ -226,7 +155,8 @@ def _loss(_key: Key, value: Piece, _context: Context) -> str:
 
 
 _READERS: dict[str, Callable[[Key, Piece, Context], object]] = {
-    "heat": _heat,
+    "heat": read_heat,
+    "analogue": read_analogue,
     "measured": _measured,
     "text": _text,
     "flag": _flag,

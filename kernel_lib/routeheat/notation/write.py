@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterable, Iterator
 from itertools import groupby
 from textwrap import fill
@@ -11,9 +12,12 @@ from routeheat.chem.route import Declaration, Route, Sheet
 from routeheat.chem.row import Row
 from routeheat.chem.species import Species
 from routeheat.chem.step import Step
+from routeheat.notation.keys import AS_TYPED
 from routeheat.notation.pasted import plain_line
 from routeheat.notation.values import LONGEST_QUOTE
 
+_IN_WATER = re.compile(r"(?:[0-9]+(?:\.[0-9]+)? H2O)?")
+"""Forms of a solution that are typed as so much water."""
 _WIDTH = 100
 """Columns after which the next key starts a line of its own."""
 
@@ -23,6 +27,8 @@ def write_sheet(sheet: Sheet) -> str:
     blocks: list[list[str]] = []
     if sheet.coverage is not None:
         blocks.append([f"uncertainty k = {decimal_text(sheet.coverage)}"])
+    if sheet.unstated is not None:
+        blocks.append([f"unstated u = {sheet.unstated.u.text} {_quoted(sheet.unstated.reason)}"])
     if sheet.species:
         width = max(len(name) for name in sheet.species)
         blocks.append(["species", *(line for item in sheet.species.values() for line in _declaration(item, width))])
@@ -85,14 +91,21 @@ def _equation(row: Row) -> str:
     if row.subject is None:
         return row.reaction.text
     text = f"{row.kind} of {row.subject.text}"
-    if row.kind == "combustion":
-        text += f" to {', '.join(species.text for _, species in row.reaction.products)}"
+    products = [species for _, species in row.reaction.products]
+    if row.kind == "neutralisation":
+        text += f" with {row.reaction.reactants[1][1].text}"
+    elif row.kind == "solution" and [(item.name, item.phase) for item in products] == [(row.subject.name, "aq")]:
+        water = _IN_WATER.fullmatch(products[0].form)
+        if water is not None:
+            return f"{text} in {water[0] or 'H2O'}(l)"
+    if row.kind in ("combustion", "solution", "dilution", "neutralisation"):
+        text += f" to {', '.join(species.text for species in products)}"
     return text
 
 
 def _row_keys(row: Row, of_step: Iterable[str] = ()) -> list[str]:
     """The heat first, then what belongs to a step, then where it comes from and what is kept."""
-    keys = [] if row.heat is None else [f"dH {row.heat.text}"]
+    keys = [] if row.heat is None else [f"{row.heat.key} {row.heat.text}"]
     keys.extend(of_step)
     if row.source:
         keys.append(f"source {_quoted(row.source)}")
@@ -125,7 +138,7 @@ def _setting(name: str, value: object) -> str:
         return name
     if isinstance(value, Measured):
         return f"{name} {value.text}"
-    return f"{name} {value}" if name == "shared" else f"{name} {_quoted(str(value))}"
+    return f"{name} {value}" if name in AS_TYPED else f"{name} {_quoted(str(value))}"
 
 
 def _quoted(text: str) -> str:

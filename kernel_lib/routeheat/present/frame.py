@@ -5,6 +5,7 @@ from __future__ import annotations
 from typing import Any
 
 from routeheat.present.flat import Flat, Plain, flat
+from routeheat.present.markup import plain
 from routeheat.present.table import Table
 
 
@@ -22,7 +23,7 @@ def frame(table: Table) -> Any:
     content = flat(table)
     columns = {head.text: _column(content, index) for index, head in enumerate(content.heads)}
     made = pandas.DataFrame(columns, columns=[head.text for head in content.heads])
-    made.attrs["title"] = table.title
+    made.attrs["title"] = plain(table.title)
     made.attrs["notes"] = list(table.notes)
     return made
 

@@ -49,7 +49,7 @@ def render_table(table: Table) -> str:
             cells.append(f"<{tag}{scope}{_align(column.align)}>{inner}</{tag}>")
         kind = ' class="total"' if number in table.strong else ""
         rows.append(f"<tr{kind}>{''.join(cells)}</tr>")
-    caption = f"<caption>{escape(table.title)}</caption>" if table.title else ""
+    caption = f"<caption>{rich_html(table.title)}</caption>" if table.title else ""
     notes = "".join(f'<p class="note">{escape(note)}</p>' for note in table.notes)
     return (
         f'<div class="routeheat"><style>{stylesheet()}</style><table>{caption}'

@@ -51,17 +51,19 @@ def reading(item: Reading, *, decimals: int = 1, say_k: bool = True) -> str:
     """A value with its uncertainty: ``−163.2 ± 9.7 (k = 1)``.
 
     ``decimals`` is used when no uncertainty is stated. A lower bound is written ``± ≥ 9.7``; no statement at all is
-    written in words, because a missing ± could be mistaken for zero.
+    written in words, because a missing ± could be mistaken for zero. What rests on an estimate says so.
     """
     if item.value is None:
         return item.words or "not entered"
+    mark = ["estimated"] if item.estimated else []
     if item.u is None:
-        return f"{number(item.value, decimals)} (u not stated)"
+        return f"{number(item.value, decimals)} ({', '.join(['u not stated', *mark])})"
     spread = item.k * item.u
     if spread == 0:
         bound = "u at least 0, not all stated" if item.at_least else "exact"
-        return f"{number(item.value, decimals)} ({bound})"
+        return f"{number(item.value, decimals)} ({', '.join([bound, *mark])})"
     place = min(decimals_for(spread), 9)
     bound = "at least " if item.at_least else ""
-    tail = f" ({coverage(item.k)})" if say_k else ""
+    said = ", ".join([*([coverage(item.k)] if say_k else []), *mark])
+    tail = f" ({said})" if said else ""
     return f"{number(item.value, place)} ± {bound}{number(spread, place)}{tail}"

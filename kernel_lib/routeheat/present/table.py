@@ -15,7 +15,7 @@ from dataclasses import dataclass, field
 from fractions import Fraction
 from typing import Literal
 
-from routeheat.present.markup import Rich
+from routeheat.present.markup import Rich, plain
 
 
 @dataclass(frozen=True, slots=True)
@@ -32,6 +32,8 @@ class Reading:
     """True when some contribution has no stated uncertainty, so that ``u`` is a lower bound."""
     words: str = ""
     """Shown instead of a number when ``value`` is ``None`` ("not entered", "out of reach")."""
+    estimated: bool = False
+    """True when it rests on an estimate; every text of it says so."""
 
 
 Cell = str | Rich | int | Fraction | float | Reading | None
@@ -56,7 +58,7 @@ class Column:
 class Table:
     """Rows of cells under columns, with a title above and notes below."""
 
-    title: str
+    title: Rich | str
     columns: tuple[Column, ...]
     rows: tuple[tuple[Cell, ...], ...]
     """Each row has one cell per column."""
@@ -68,4 +70,4 @@ class Table:
     def __post_init__(self) -> None:
         for row in self.rows:
             if len(row) != len(self.columns):
-                raise ValueError(f"table {self.title!r}: a row of {len(row)} cells under {len(self.columns)} columns")
+                raise ValueError(f"table {plain(self.title)!r}: a row of {len(row)} cells under {len(self.columns)} columns")

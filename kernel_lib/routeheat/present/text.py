@@ -106,7 +106,7 @@ def render_table(table: Table) -> str:
     widths = [max((display_width(line) for row in (header, *body) for line in row[index]), default=0)
               for index in range(len(table.columns))]
     rule = "  ".join("─" * width for width in widths)
-    lines = _wrap(visible(table.title), PAGE) if table.title else []
+    lines = _wrap(visible(plain(table.title)), PAGE) if table.title else []
     lines += [*_aligned(header, table.columns, widths), rule]
     ruled = True
     for index, row in enumerate(body):

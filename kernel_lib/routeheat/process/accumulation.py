@@ -129,7 +129,7 @@ def accumulation(step: Step, settings: Settings, limiting: Species) -> Accumulat
     fed_mass = settings.number("fedpart", PURE, 0.0)
     faults = [] if 0 <= fed_mass < 1 else ["fedpart is a part of the final mass: at least 0 %, below 100 %"]
     faults += [] if feed is None or feed.value > 0 else ["the feed time must be longer than zero"]
-    faults += [f"{key} is not positive" for key, unit in (("k1", PER_HOUR), ("k2", SECOND_ORDER))
+    faults += [f"{key} is not positive" for key, unit in (("rate1", PER_HOUR), ("rate2", SECOND_ORDER))
                if settings.number(key, unit, 1.0) <= 0]
     if faults:
         return Accumulation(Value(1.0), 1.0, "assumed", faults=tuple(faults))
@@ -138,7 +138,7 @@ def accumulation(step: Step, settings: Settings, limiting: Species) -> Accumulat
         return Accumulation(Value(1.0, 0.0), 1.0, "batch",
                             faults=("a batch has everything in the vessel: Xac is 1",) if wrong else ())
     if typed is not None:
-        return _typed(typed, _fed_ratio(step, settings, limiting)[0], fed_mass, "k1" in settings or "k2" in settings)
+        return _typed(typed, _fed_ratio(step, settings, limiting)[0], fed_mass, "rate1" in settings or "rate2" in settings)
     return _from_kinetics(step, settings, limiting, feed, fed_mass)
 
 
@@ -153,7 +153,7 @@ def _typed(typed: Value, equivalents: float, fed_mass: float, kinetics: bool) ->
 def _from_kinetics(
     step: Step, settings: Settings, limiting: Species, feed: Value | None, fed_mass: float
 ) -> Accumulation:
-    first, second = settings.value("k1", PER_HOUR), settings.value("k2", SECOND_ORDER)
+    first, second = settings.value("rate1", PER_HOUR), settings.value("rate2", SECOND_ORDER)
     if first is None and second is None:
         return _assumed("no accumulation and no rate constant typed")
     if feed is None:

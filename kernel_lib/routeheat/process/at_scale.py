@@ -86,12 +86,14 @@ class StepAtScale:
 
 def _reached(what: str, scenario: Scenario) -> list[str]:
     """Which limits a scenario reaches: TD24 in classes 4 and 5, MTT in classes 3 and 4."""
-    found = []
+    surely: list[str] = []
+    perhaps: list[str] = []
     for limit, classes in (("TD24", {4, 5}), ("MTT", {3, 4})):
         hits = [set(item.classes) <= classes for item in scenario.reachable]
         if any(hits):
-            found.append(f"{what} {'reaches' if all(hits) else 'may reach'} {limit}")
-    return found
+            (surely if all(hits) else perhaps).append(limit)
+    return [f"{what} {verb} {' and '.join(limits)}" for verb, limits in (("reaches", surely), ("may reach", perhaps))
+            if limits]  # fmt: skip
 
 
 @dataclass(frozen=True, slots=True)
@@ -124,17 +126,17 @@ class RouteAtScale:
     @property
     def largest_rise(self) -> Extreme:
         """Largest adiabatic rise of an exothermic step in K."""
-        return self._extreme(lambda step: step.vessel.rise, max, exothermic=True)
+        return self._extreme(lambda step: step.vessel.rise, max)
 
     @property
     def highest_mtsr(self) -> Extreme:
         """Highest MTSR as run in °C."""
-        return self._extreme(lambda step: step.vessel.mtsr, max, exothermic=True)
+        return self._extreme(lambda step: step.vessel.mtsr, max)
 
     @property
     def least_margin(self) -> Extreme:
         """Smallest distance of a scenario temperature from TD24 in K; negative when beyond it."""
-        return self._extreme(lambda step: step.margin, min, exothermic=True)
+        return self._extreme(lambda step: step.margin, min)
 
     @property
     def gas(self) -> float:
@@ -150,7 +152,10 @@ class RouteAtScale:
     def exceeded(self) -> tuple[str, ...]:
         """Criteria exceeded on the data entered, each with its step; never empty: says so when there is none."""
         found = [f"{step.label}: {item}" for step in self.steps for item in step.exceeded]
-        return tuple(found) or (NOTHING_EXCEEDED,)
+        if found:
+            return tuple(found)
+        without = self._unclassified(lambda item: item.as_run)
+        return (f"{NOTHING_EXCEEDED}; not classifiable: {', '.join(without)}" if without else NOTHING_EXCEEDED,)
 
     @property
     def open_questions(self) -> tuple[str, ...]:
@@ -176,19 +181,22 @@ class RouteAtScale:
             if worst == highest:
                 by_words.setdefault(words, []).append(label)
         found += [f"{words} ({', '.join(labels)})" for words, labels in by_words.items()]
-        without = [step.label for step in self.steps if isinstance(scenario(step.criticality).at_values, NotAssessed)
-                   and scenario(step.criticality).at_values is not ENDOTHERMIC]  # fmt: skip
-        if without:
+        if without := self._unclassified(scenario):
             found.append(f"not classifiable: {', '.join(without)}")
         return "; ".join(found) or "no exothermic step"
 
+    def _unclassified(self, scenario: Callable[[Criticality], Scenario]) -> list[str]:
+        found = ((step.label, scenario(step.criticality).at_values) for step in self.steps)
+        return [label for label, item in found if isinstance(item, NotAssessed) and item is not ENDOTHERMIC]
+
     def _extreme(
-        self, quantity: Callable[[StepAtScale], Value | NotAssessed], choose: Callable[..., float], *, exothermic: bool
+        self, quantity: Callable[[StepAtScale], Value | NotAssessed], choose: Callable[..., float]
     ) -> Extreme:
+        """Over the steps that are not endothermic."""
         known: list[tuple[Value, str]] = []
         unknown = []
         for step in self.steps:
-            if exothermic and step.vessel.exothermic is False:
+            if step.vessel.exothermic is False:
                 continue
             item = quantity(step)
             if isinstance(item, Value):

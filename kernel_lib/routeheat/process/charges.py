@@ -26,10 +26,12 @@ _MOL_PER_MOL = read_unit("mol/mol")
 _LITRE_PER_KG = read_unit("L/kg")
 _KG_PER_KG = read_unit("kg/kg")
 _KG_PER_LITRE = read_unit("kg/L")
-_AMOUNT = re.compile(r"(?P<name>.+?)\s+(?P<number>[0-9]{1,12}(?:\.[0-9]{1,12})?)\s*(?P<unit>[^0-9].*)?")
+_AMOUNT = re.compile(r"(?P<name>(?:[^()]|\([^()]*\))+?)\s+(?P<number>[0-9]{1,12}(?:\.[0-9]{1,12})?)\s*(?P<unit>[^0-9].*)?")
 _SPOKEN = {"eq": "mol/mol", "equiv": "mol/mol", "vol": "L/kg", "volumes": "L/kg", "wt %": "%", "wt%": "%",
            "w/w": "kg/kg"}
 _HINT = "like toluene 5 L/kg density 0.867 kg/L, or H2SO4 0.05 mol/mol"
+_BETWEEN = re.compile(r",\s+(?![^()]*\))")
+"""The comma between two charges; one within the state of a species is part of its name."""
 _DUST = 1e-6
 """Relative difference that rounding of typed masses may leave."""
 _WATER = {"H": Fraction(2), "O": Fraction(1)}
@@ -82,7 +84,7 @@ def charges(step: Step, settings: Settings, limiting: Species) -> Charges:
         return Charges(tuple(items.values()), False)
     if text.strip().lower() in ("nil", "none"):
         return Charges(tuple(items.values()), True)
-    drafts = [_read(part, step) for part in re.split(r",\s+", text.strip().rstrip(","))]
+    drafts = [_read(part, step) for part in _BETWEEN.split(text.strip().rstrip(","))]
     size = settings.value("size", AMOUNT)
     scale = next((_moles(draft) for draft in drafts if draft.species == limiting and draft.unit == KILOGRAM),
                  None if size is None else Fraction(size.value))

@@ -15,10 +15,12 @@ from routeheat.chem.reaction import Reaction, add_net
 from routeheat.chem.row import Row
 from routeheat.errors import OutOfReach, RouteError
 from routeheat.hess.combination import combine
-from routeheat.present.markup import plain
+from routeheat.present.markup import Rich, as_rich, join, plain
 from routeheat.process.extents import net_equation, theoretical
 from routeheat.process.notes import temperature_note
 from routeheat.process.profile import Profile
+
+DIFFER = "no check: the net equations differ by"
 
 
 @dataclass(frozen=True, slots=True)
@@ -36,6 +38,13 @@ class Closure:
     verdict: str
     """``closes within its uncertainty``, ``does not close: …``, ``cannot be judged: …`` or ``no check: …``."""
     notes: tuple[str, ...] = ()
+
+    @property
+    def words(self) -> Rich:
+        """The verdict as printed, the difference of net equations with its subscripts."""
+        if self.difference is None or not self.verdict.startswith(DIFFER):
+            return as_rich(self.verdict)
+        return join([f"{DIFFER} ", self.difference.rich])
 
 
 def significant(heat: HeatSum) -> bool:
@@ -56,7 +65,7 @@ def close(first: Profile, second: Profile) -> Closure:
     if difference.net:
         found = _from_known(difference, _all_known(first, second), first.k)
         if found is None:
-            words = f"no check: the net equations differ by {plain(difference.rich)}"
+            words = f"{DIFFER} {plain(difference.rich)}"
             return Closure(*names, difference, (), None, words)
         known, rows = found
     missing = [f"{item.route.name}: {', '.join(labels)}" for item in (first, second) if (labels := _missing(item))]

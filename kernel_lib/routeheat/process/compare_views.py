@@ -5,6 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING, Any
 
 from routeheat.present.ladder import Ladder
+from routeheat.present.markup import Rich, join, plain
 from routeheat.present.table import Cell, Column, Reading, Table
 from routeheat.process.notes import figure_notes, merged
 from routeheat.process.profile_views import CUMULATIVE, caption, heat_dict, in_words, ladder_column, sum_reading
@@ -18,9 +19,9 @@ if TYPE_CHECKING:
 _RULE = "two heats count as different when they differ by at least twice the standard uncertainty of the difference"
 
 
-def _title(comparison: Comparison) -> str:
+def _title(comparison: Comparison) -> Rich:
     first = comparison.profiles[0]
-    return f"Routes to {first.route.makes}: cumulative heat per {first.basis.words}"
+    return join(["Routes to ", first.route.makes.rich, f": cumulative heat per {first.basis.words}"])
 
 
 def table(comparison: Comparison) -> Table:
@@ -68,7 +69,7 @@ def difference_table(comparison: Comparison) -> Table:
     rows = tuple(_difference_row(item) for item in comparison.differences)
     notes = [_RULE, "data that both routes use cancel in the difference and in its uncertainty"]
     notes += dict.fromkeys(note for item in comparison.differences for note in item.notes)
-    return Table(f"{_title(comparison)}, differences of totals", columns, rows, tuple(notes))
+    return Table(join([_title(comparison), ", differences of totals"]), columns, rows, tuple(notes))
 
 
 def _difference_row(item: Difference) -> tuple[Cell, ...]:
@@ -90,7 +91,8 @@ def closure_table(comparison: Comparison) -> Table:
              "share no axis with the cumulative heats", _RULE]
     notes += dict.fromkeys(f"{item.second} − {item.first}: {note}" for item in comparison.closures
                            for note in item.notes)
-    return Table(f"Routes to {comparison.profiles[0].route.makes}: do the data agree?", columns, rows, tuple(notes))
+    title = join(["Routes to ", comparison.profiles[0].route.makes.rich, ": do the data agree?"])
+    return Table(title, columns, rows, tuple(notes))
 
 
 def _closure_row(item: Closure) -> tuple[Cell, ...]:
@@ -98,7 +100,7 @@ def _closure_row(item: Closure) -> tuple[Cell, ...]:
     if item.difference is not None and (item.rows or not item.difference.net):
         differ = item.difference.rich if item.difference.net else "nothing"
     heat = Reading(None, None, words="no check") if item.discrepancy is None else item.discrepancy.reading
-    return (f"{item.second} − {item.first}", differ, ", ".join(item.rows), heat, item.verdict)
+    return (f"{item.second} − {item.first}", differ, ", ".join(item.rows), heat, item.words)
 
 
 def ladder(comparison: Comparison, *, overlay: bool = False) -> Ladder:
@@ -115,7 +117,7 @@ def ladder(comparison: Comparison, *, overlay: bool = False) -> Ladder:
 def to_dict(comparison: Comparison) -> dict[str, Any]:
     """JSON-safe content; exact numbers are texts."""
     return {
-        "title": _title(comparison),
+        "title": plain(_title(comparison)),
         "unit": comparison.unit,
         "profiles": [profile_dict(item) for item in comparison.profiles],
         "differences": [

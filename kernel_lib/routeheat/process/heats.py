@@ -20,6 +20,7 @@ from routeheat.units import KELVIN, KJ_PER_KG_K, MOL_PER_KG
 
 Loss = Literal["reacted", "unreacted"]
 PURE_COMPONENTS = "derived from known rows; pure components: no mixing, solvation or dilution"
+ESTIMATED = "estimated"
 _COMPARED = 10
 
 
@@ -30,7 +31,7 @@ class MolarHeat:
     heat: HeatSum | None
     """kJ/mol, exothermic negative; ``None`` when it is not entered and cannot be derived."""
     origin: str
-    """``typed``, ``derived from known rows; …`` or ``not entered: …`` with the reason."""
+    """``typed``, ``estimated, like A1``, ``derived from known rows; …`` or ``not entered: …`` with the reason."""
     temperature: Fraction | None
     """Kelvin the heat holds at; ``None`` when that is not stated."""
 
@@ -46,7 +47,10 @@ def molar_heat(step: Step, known: Mapping[str, Row], k: float) -> MolarHeat:
         except ValueError as problem:
             raise RouteError(f"{step.label}: {problem}", step=step.label) from problem
         own = step.row.heat.temperature or step.temperature
-        return MolarHeat(heat, "typed", None if own is None else own.to(KELVIN))
+        origin = f"typed, {ESTIMATED}" if step.row.estimated else "typed"
+        if step.row.heat.analogue:
+            origin = f"{ESTIMATED}, like {step.row.heat.analogue}"
+        return MolarHeat(heat, origin, None if own is None else own.to(KELVIN))
     return _derived(step, known, k)
 
 
@@ -62,6 +66,8 @@ def _derived(step: Step, known: Mapping[str, Row], k: float) -> MolarHeat:
         return _not_entered(str(problem).splitlines()[0])
     rows = [label for label, c in combination.coefficients.items() if c]
     origin = f"{PURE_COMPONENTS} ({', '.join(rows)})"
+    if combination.heat.estimated:
+        origin += f"; {ESTIMATED}: {', '.join(combination.heat.estimated)}"
     if not combination.unique:
         for other in alternatives(combination, _COMPARED):
             if (other.heat.exact, other.heat.unknowns) != (combination.heat.exact, combination.heat.unknowns):

@@ -46,12 +46,13 @@ def _levels(check: FeedCheck) -> tuple[Level, ...]:
 
 
 def _spots(check: FeedCheck) -> tuple[Spot, ...]:
-    spots = [Spot(check.feed_h, 100 * check.load,
-                  f"feed as typed: {_hours(check.feed_h)}, {number(100 * check.load, 0)}\N{NO-BREAK SPACE}%")]  # fmt: skip
-    for words, hours, margin in (("at full capacity", check.shortest_h, 1.0),
+    load = 100 * check.load
+    words = f"feed as typed: {_hours(check.feed_h)}, {number(load, 0)}\N{NO-BREAK SPACE}%"
+    spots = [Spot(check.feed_h, load, words)]
+    for limit, hours, margin in (("at full capacity", check.shortest_h, 1.0),
                                  ("within the margin", check.shortest_with_margin_h, check.margin)):  # fmt: skip
         if hours:
-            spots.append(Spot(hours, 100 * margin, f"shortest {words}: {_hours(rounded_up(hours))}", "ring"))
+            spots.append(Spot(hours, 100 * margin, f"shortest {limit}: {_hours(rounded_up(hours))}", "ring"))
     return tuple(spots)
 
 

@@ -6,14 +6,18 @@ from collections.abc import Callable, Iterable, Sequence
 from fractions import Fraction
 from typing import TYPE_CHECKING
 
+from routeheat.chem.row import Row
+from routeheat.hess.contained import Counted, double_counts
+from routeheat.hess.warming import at_one_temperature
 from routeheat.present.numbers import coverage, number
+from routeheat.process.cautions import SHORT
 from routeheat.units import ZERO_CELSIUS
 
 if TYPE_CHECKING:
+    from routeheat.process.basis import Basis
     from routeheat.process.profile import Profile, StepHeat
 
 _MEANING = {"reacted": "heat per mole charged", "unreacted": "heat of what the yield delivers"}
-CAUTION = "A screening aid on the values typed; it does not replace measurements or a hazard study."
 
 
 def profile_notes(profile: Profile) -> tuple[str, ...]:
@@ -24,9 +28,11 @@ def profile_notes(profile: Profile) -> tuple[str, ...]:
         *profile.yield_notes,
         *(f"{item.label}: {item.origin}" for item in profile.steps if item.origin.startswith("derived")),
         *_sides(profile),
-        *temperature_note(profile.steps),
+        *_remarks(profile),
+        *_double_counts(profile),
+        *temperature_note(profile.steps, profile.basis),
         f"± is {coverage(profile.k)}; exothermic is negative. Sums after yields are not state functions.",
-        CAUTION,
+        SHORT,
     ]
     return tuple(found)
 
@@ -34,7 +40,15 @@ def profile_notes(profile: Profile) -> tuple[str, ...]:
 def figure_notes(profiles: Sequence[Profile]) -> tuple[str, ...]:
     """What a reader of a diagram must see of one or several profiles; everything else stands with the table."""
     return merged(
-        profiles, lambda item: (*_not_entered(item), *item.yield_notes, *temperature_note(item.steps), CAUTION)
+        profiles,
+        lambda item: (
+            *_not_entered(item),
+            *item.yield_notes,
+            *_estimated(item),
+            *_double_counts(item),
+            *temperature_note(item.steps),
+            SHORT,
+        ),
     )
 
 
@@ -43,11 +57,11 @@ def merged(profiles: Sequence[Profile], notes: Callable[[Profile], Iterable[str]
     found: dict[str, list[str]] = {}
     for item in profiles:
         for note in notes(item):
-            if note != CAUTION:
+            if note != SHORT:
                 found.setdefault(note, []).append(item.route.name)
     shared = len(profiles)
     texts = [note if len(names) == shared else f"route {', '.join(names)}: {note}" for note, names in found.items()]
-    return (*texts, CAUTION)
+    return (*texts, SHORT)
 
 
 def yield_notes(profile: Profile) -> tuple[str, ...]:
@@ -65,8 +79,13 @@ def yield_notes(profile: Profile) -> tuple[str, ...]:
     return tuple(found)
 
 
-def temperature_note(items: Iterable[StepHeat]) -> tuple[str, ...]:
-    """Names the temperatures when the heats do not all hold at one; empty when they do, or none is stated."""
+def temperature_note(items: Iterable[StepHeat], basis: Basis | None = None) -> tuple[str, ...]:
+    """Names the temperatures when the heats do not all hold at one; empty when they do, or none is stated.
+
+    With the ``basis`` of a profile the note also says what bringing all of them to one temperature would change the
+    sum by, every species staying in its phase.
+    """
+    items = tuple(items)
     by_temperature: dict[Fraction | None, list[str]] = {}
     for item in items:
         if item.heat is not None:
@@ -74,7 +93,56 @@ def temperature_note(items: Iterable[StepHeat]) -> tuple[str, ...]:
     if len(by_temperature) < 2:
         return ()
     words = [f"{', '.join(labels)} {_celsius(kelvin)}" for kelvin, labels in by_temperature.items()]
-    return (f"heats at different temperatures, not brought to one temperature: {'; '.join(words)}",)
+    note = f"heats at different temperatures, not brought to one temperature: {'; '.join(words)}"
+    return (note + ("" if basis is None else _size(items, basis)),)
+
+
+def _size(items: Sequence[StepHeat], basis: Basis) -> str:
+    """What one temperature for all would change; empty when fewer than two temperatures are stated."""
+    stated = [
+        (item.step.row.reaction, item.extent * basis.moles, item.temperature)
+        for item in items
+        if item.heat is not None and item.temperature is not None
+    ]
+    if len({kelvin for _, _, kelvin in stated}) < 2:
+        return ""
+    change = at_one_temperature(stated, transitions=())
+    if change.value is None:
+        return f"; by how much that would change the sum is not known: {change.missing}"
+    where = f"{number(float(change.common - ZERO_CELSIUS), 0)} °C"
+    return f"; bringing all to {where} would change the sum by {number(float(change.value), 1)} {basis.unit}"
+
+
+def _rows(profile: Profile) -> list[Row]:
+    """Rows whose typed heats the profile rests on: its steps, and the known rows that others are derived from."""
+    found: dict[str, Row] = {}
+    for item in profile.steps:
+        if item.step.row.heat is not None:
+            found[item.label] = item.step.row
+        elif item.molar is not None:
+            found |= {name: profile.route.known[name] for name in item.molar.coefficients if name in profile.route.known}
+    return list(found.values())
+
+
+def _remarks(profile: Profile) -> list[str]:
+    return [remark for row in _rows(profile) for remark in row.remarks]
+
+
+def _estimated(profile: Profile) -> list[str]:
+    found = [row.label for row in _rows(profile) if row.estimated]
+    return [f"estimated: {', '.join(found)}"] if found else []
+
+
+def _double_counts(profile: Profile) -> list[str]:
+    steps = [Counted.step(item.step) for item in profile.steps if item.heat is not None]
+    derived_from = [
+        Counted(profile.route.known[name], c)
+        for item in profile.steps
+        if item.step.row.heat is None and item.molar is not None
+        for name, c in item.molar.coefficients.items()
+        if name in profile.route.known
+    ]
+    return [found.text for found in double_counts([*steps, *derived_from])]
 
 
 def _celsius(kelvin: Fraction | None) -> str:

@@ -145,6 +145,8 @@ def _details(item: StepHeat, profile: Profile) -> tuple[tuple[str, str], ...]:
         ("cumulative", sum_text(item.cumulative, profile.unit)),
         ("origin", item.origin),
     ]
+    if item.molar is not None and item.molar.estimated:
+        found.append(("estimated", ", ".join(item.molar.estimated)))
     if item.temperature is not None:
         found.append(("at", f"{number(float(item.temperature - ZERO_CELSIUS), 0)} °C"))
     if item.step.row.source:

@@ -2,10 +2,14 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+from dataclasses import replace
 from pathlib import Path
+from typing import Literal
 
 from routeheat.chem.route import Route, Sheet
 from routeheat.errors import Fault, RouteError, RouteheatError, SheetFaults
+from routeheat.hess.contained import EFFECTS, Counted, double_counts, unknown_effects
 from routeheat.notation.build import build_sheet
 from routeheat.notation.faults import render, split_lines
 from routeheat.process.extents import route_faults
@@ -18,15 +22,21 @@ def check_sheet(text: str) -> tuple[Sheet, tuple[Fault, ...]]:
     """
     sheet, found = build_sheet(text)
     broken = {fault.subject for fault in found if fault.severity == "fault"}
-    lines = split_lines(text) if sheet.routes else []
+    lines = split_lines(text) if sheet.routes or sheet.known else []
     more = [
         _placed(problem, route, lines)
         for route in sheet.routes.values()
         for problem in route_faults(route)
         if problem.step not in broken
     ]
-    ordered = sorted((*found, *more), key=lambda fault: (fault.line, fault.column, fault.severity))
-    return sheet, tuple(ordered)
+    notices = list(_contained(sheet, lines))
+    if notices:
+        sheet = replace(sheet, notices=tuple(sorted((*sheet.notices, *notices), key=_in_text)))
+    return sheet, tuple(sorted((*found, *more, *notices), key=_in_text))
+
+
+def _in_text(fault: Fault) -> tuple[int, int, str]:
+    return fault.line, fault.column, fault.severity
 
 
 def read_sheet(source: str | Path) -> Sheet:
@@ -51,11 +61,36 @@ def read_sheet(source: str | Path) -> Sheet:
     return sheet
 
 
+def _contained(sheet: Sheet, lines: list[str]) -> Iterator[Fault]:
+    """Notices: effects that a heat includes and another step of its route adds, and effects that nobody looks for."""
+    rows = {row.label: row for row in sheet.known.values()}
+    said: set[str] = set()
+    for route in sheet.routes.values():
+        rows |= {step.label: step.row for step in route.steps}
+        for item in double_counts(Counted.step(step) for step in route.steps):
+            if item.text not in said:
+                said.add(item.text)
+                hint = f"leave it out of one of the two, or out of includes of {item.holder}"
+                yield _at(rows[item.adding].line, lines, item.text, hint, "notice", item.adding)
+    for row in rows.values():
+        for word, near in unknown_effects(row):
+            hint = f"did you mean {near}?" if near else f"known: {', '.join(EFFECTS)}"
+            message = f"no row is looked for that adds {word[:40]} a second time"
+            yield _at(row.line, lines, message, hint, "notice", row.label)
+
+
 def _placed(problem: RouteError, route: Route, lines: list[str]) -> Fault:
     """The fault of a route at the line of the step that has it, or of the route itself."""
     steps = {step.label: step.row.line for step in route.steps if step.label not in route.used}
     line = steps.get(problem.step, route.line)
+    return _at(line, lines, problem.message, problem.hint, "fault", problem.step or route.name)
+
+
+def _at(
+    line: int, lines: list[str], message: str, hint: str, severity: Literal["fault", "notice"], subject: str
+) -> Fault:
+    """A fault that covers what is typed on a line."""
     typed = lines[line - 1] if 0 < line <= len(lines) else ""
     column = len(typed) - len(typed.lstrip()) + 1
     length = max(1, len(typed.split("#")[0].strip()))
-    return Fault(problem.message, line, column, length, problem.hint, "fault", problem.step or route.name)
+    return Fault(message, line, column, length, hint, severity, subject)

@@ -264,6 +264,8 @@ def provisional_of(
 ) -> tuple[str, ...]:
     """What is estimated, so that a class built on it is provisional."""
     found = [part.strip() for part in settings.text("estimated").split(",") if part.strip()]
+    if basis.molar is not None and basis.molar.estimated:
+        found = [name for name in found if name != "dH"] + [f"dH ({', '.join(basis.molar.estimated)} estimated)"]
     if basis.origin.startswith("derived"):
         found.append("dH (derived, pure components)")
     for name, item in (("MTT", limit), ("TD24", stability)):

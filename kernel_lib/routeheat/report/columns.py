@@ -49,7 +49,8 @@ def _need(cells: list[Rich], bold: list[bool], right: bool) -> Need:
 
 
 def _word(cell: Rich, *, bold: bool) -> float:
-    return max((text_width(word, SIZE, bold=bold) for word in plain(cell)[:2000].split()), default=0.0)
+    """Width of the longest part that no line end may break; a non-breaking space is none."""
+    return max((text_width(word, SIZE, bold=bold) for word in plain(cell)[:2000].split(" ")), default=0.0)
 
 
 def folded(grid: Grid, room: float = PAGE) -> tuple[Grid, ...]:

@@ -12,9 +12,10 @@ from dataclasses import dataclass, replace
 from typing import Literal
 
 from routeheat.draw.arrange import Drawing
-from routeheat.present.markup import Rich, Run, plain
-from routeheat.present.table import Table
-from routeheat.present.text import cell_text, column_header, shared_coverage, visible_rich
+from routeheat.present.markup import Rich, Run, as_rich, join, plain
+from routeheat.present.numbers import coverage
+from routeheat.present.table import Cell, Column, Reading, Table
+from routeheat.present.text import cell_text, column_header, shared_coverage, visible, visible_rich
 
 LONGEST_CELL = 300
 """Characters from which on a cell, or the title of the report, is shortened."""
@@ -66,6 +67,11 @@ class Grid:
             self.strong,
         )  # fmt: skip
 
+    def turned(self) -> Grid:
+        """The grid with rows and columns exchanged, everything flush left."""
+        header, *rows = zip(self.header, *self.rows, strict=True)
+        return Grid(header, tuple(rows), (False,) * len(header))
+
 
 @dataclass(frozen=True, slots=True)
 class TableBlock:
@@ -76,6 +82,8 @@ class TableBlock:
     grid: Grid
     notes: tuple[Rich, ...] = ()
     number: int = 0
+    folds: bool = False
+    """True: on a screen it is closed at first, with its caption to open it; on paper it is open."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -125,7 +133,7 @@ class Document:
 
 def line(text: Rich | str, most: int = 0) -> Rich:
     """A harmless text; longer than ``most`` characters (if not 0) it is shortened in its middle."""
-    rich = visible_rich(text)
+    rich = tuple(run for run in visible_rich(text) if run.text)
     length = sum(len(run.text) for run in rich)
     if not most or length <= most:
         return rich
@@ -147,23 +155,51 @@ def lines(text: str) -> tuple[str, ...]:
 
 
 def grid(table: Table) -> Grid:
-    """A table as written: headers with units and the k of their ±, cells as texts."""
+    """A table as written: headers with units and the k of their ±, cells as texts.
+
+    Where columns have no unit, as in a ledger, the row says unit and k. Columns without any content are left out.
+    """
     says_k = [shared_coverage(table, index) is None for index in range(len(table.columns))]
-    header = tuple(_unbroken(line(column_header(table, index), LONGEST_HEADING)) for index in range(len(table.columns)))
+    header = tuple(_unbroken(line(_header(table, index), LONGEST_HEADING)) for index in range(len(table.columns)))
     rows = tuple(
         tuple(
-            line(cell if isinstance(cell, tuple) else cell_text(cell, column, say_k=says_k[index]), LONGEST_CELL)
-            for index, (cell, column) in enumerate(zip(row, table.columns, strict=True))
+            _unbroken(line(_written(cell, column, say_k=says_k[index]), LONGEST_CELL))
+            for index, (cell, column) in enumerate(zip(_with_coverage(table, row), table.columns, strict=True))
         )
         for row in table.rows
     )
-    return Grid(header, rows, tuple(column.align == "right" for column in table.columns), table.strong)
+    whole = Grid(header, rows, tuple(column.align == "right" for column in table.columns), table.strong)
+    filled = [index for index in range(len(header)) if not rows or not index or any(row[index] for row in rows)]
+    return whole.columns(filled)
 
 
-def _unbroken(header: Rich) -> Rich:
-    """A header in which no line ends between a slash and its unit, or within a coverage factor."""
+def _written(cell: Cell, column: Column, *, say_k: bool) -> Rich | str:
+    return cell if isinstance(cell, tuple) else cell_text(cell, column, say_k=say_k)
+
+
+def _header(table: Table, index: int) -> Rich:
+    column = table.columns[index]
+    return column_header(table, index) if column.unit else as_rich(column.header)
+
+
+def _with_coverage(table: Table, row: tuple[Cell, ...]) -> tuple[Cell, ...]:
+    """The row, its name with the coverage factor of those columns whose header does not say it."""
+    first = row[0]
+    factors = dict.fromkeys(
+        k for index, cell in enumerate(row)
+        if isinstance(cell, Reading) and cell.u and not table.columns[index].unit
+        and (k := shared_coverage(table, index)) is not None
+    )  # fmt: skip
+    if not factors or not isinstance(first, str | tuple):
+        return row
+    return (join([first, *(f", ± {coverage(k)}" for k in factors)]), *row[1:])
+
+
+def _unbroken(text: Rich) -> Rich:
+    """A text in which no line ends between a slash and its unit, or within a coverage factor."""
     return tuple(
-        Run(run.text.replace(" / ", " /\xa0").replace("± k = ", "±\xa0k\xa0=\xa0"), run.style) for run in header
+        Run(run.text.replace(" / ", " /\xa0").replace("± k = ", "±\xa0k = ").replace("k = ", "k\xa0=\xa0"), run.style)
+        for run in text
     )
 
 
@@ -176,7 +212,7 @@ def table_block(name: str, table: Table, *extra: str, caption: Rich | str = "") 
 def figure_block(name: str, drawing: Drawing, *extra: str) -> FigureBlock:
     """A figure whose title is the caption and whose notes stand below it."""
     notes = tuple(line(note) for note in dict.fromkeys((*drawing.notes, *extra)))
-    bare = replace(drawing, title="", notes=(), alt=drawing.alt or plain(drawing.title))
+    bare = replace(drawing, title="", notes=(), alt=visible(drawing.alt or plain(drawing.title)))
     return FigureBlock(name, line(drawing.title, LONGEST_HEADING), bare, notes)
 
 

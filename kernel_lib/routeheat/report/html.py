@@ -89,7 +89,7 @@ def _block(block: Block) -> str:
 
 
 def _table(block: TableBlock) -> str:
-    caption = f'<p class="caption" id="{block.id}">Table {block.number}. {rich_html(block.caption)}</p>'
+    words = f"Table {block.number}. {rich_html(block.caption)}"
     parts = folded(block.grid)
     tables = []
     for number, grid in enumerate(parts, 1):
@@ -98,7 +98,11 @@ def _table(block: TableBlock) -> str:
         tables.append(
             f'<div class="scroll" role="region" aria-label="{label}" tabindex="0">{_grid(grid, block.id)}</div>'
         )
-    return f'<div class="table">{caption}{"".join(tables)}{_notes(block.notes)}</div>'
+    inside = "".join(tables) + _notes(block.notes)
+    if block.folds:
+        summary = f'<summary class="caption" id="{block.id}">{words}</summary>'
+        return f'<details class="table">{summary}{inside}</details>'
+    return f'<div class="table"><p class="caption" id="{block.id}">{words}</p>{inside}</div>'
 
 
 def _grid(grid: Grid, caption: str) -> str:

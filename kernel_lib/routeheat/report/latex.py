@@ -67,7 +67,7 @@ def _table(table: Table) -> str:
     align = "".join("r" if column.align == "right" else "l" for column in table.columns)
     lines = ["\\begin{table}[htbp]", "\\centering"]
     if table.title:
-        lines.append(f"\\caption{{{latex_text(table.title)}}}")
+        lines.append(f"\\caption{{{_rich(table.title)}}}")
     lines += [f"\\begin{{tabular}}{{{align}}}", "\\hline"]
     lines += [_line([_rich(column_header(table, index)) for index in range(len(table.columns))]), "\\hline"]
     for number, row in enumerate(table.rows):

@@ -70,11 +70,17 @@ def _title(sheet: Sheet) -> str:
     return f"Heats of routes to {', '.join(products)}" if products else "Heats of reaction"
 
 
-def _comparisons(profiles: Iterable[Profile], per: Any) -> Iterable[Comparison]:
-    groups: dict[Species, list[Route]] = {}
+def by_product(profiles: Iterable[Profile]) -> tuple[tuple[Profile, ...], ...]:
+    """The profiles of routes that make one species together, in the order of the sheet."""
+    groups: dict[Species, list[Profile]] = {}
     for item in profiles:
-        groups.setdefault(item.route.makes, []).append(item.route)
-    return [compare_routes(routes, per=per) for routes in groups.values() if len(routes) > 1]
+        groups.setdefault(item.route.makes, []).append(item)
+    return tuple(map(tuple, groups.values()))
+
+
+def _comparisons(profiles: Iterable[Profile], per: Any) -> Iterable[Comparison]:
+    groups = by_product(profiles)
+    return [compare_routes([item.route for item in group], per=per) for group in groups if len(group) > 1]
 
 
 def _combination(sheet: Sheet, label: str) -> Combination | Refusal:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import io
 from collections.abc import Iterator
+from itertools import pairwise
 from typing import Any
 
 from routeheat.draw.glyphs import LACKING, LACKING_NOTE, font_file, shown, shown_rich
@@ -30,6 +31,7 @@ from routeheat.report.figures import Printed, printed
 
 _MARGIN = 56.7
 _LONGEST_PROPERTY = 250
+_TOGETHER = 2
 _CLOSING = {"sub": "</sub>", "sup": "</super>", "italic": "</i>"}
 _FONTS = {
     "Report": {}, "Report-Bold": {"bold": True}, "Report-Italic": {"italic": True},
@@ -104,8 +106,11 @@ class _Story:
         self.flowables.append(self._text(document.caution, "note"))
         for section in document.sections:
             self.flowables.append(self._entry(line(section.heading), "h1", section.name, 0))
-            for block in section.blocks:
-                self.flowables += self._block(block)
+            for block, following in pairwise((*section.blocks, None)):
+                made = list(self._block(block))
+                if isinstance(block, Paragraph) and isinstance(following, TableBlock | FigureBlock):
+                    made[-1].keepWithNext = 1
+                self.flowables += made
         if self.lacking:
             self.flowables.append(self._text(line(LACKING_NOTE), "note"))
 
@@ -144,8 +149,11 @@ class _Story:
                 yield Spacer(1, 6)
             yield self._grid(grid)
         yield Spacer(1, 3)
-        for note in block.notes:
-            yield self._text(note, "note")
+        *notes, last = [self._text(note, "note") for note in block.notes] or [Spacer(1, 0)]
+        for note in notes[-_TOGETHER:]:
+            # the last notes go to a new page together, never one alone
+            note.keepWithNext = 1
+        yield from (*notes, last)
         yield Spacer(1, 8)
 
     def _grid(self, grid: Grid) -> Any:

@@ -9,6 +9,7 @@ from routeheat.errors import UnknownName
 from routeheat.present.markup import as_rich
 from routeheat.process.cautions import FULL, SHORT
 from routeheat.report import results, standing
+from routeheat.report.agreement import reconciled
 from routeheat.report.data import data_tables
 from routeheat.report.document import (
     LONGEST_CELL,
@@ -24,7 +25,11 @@ from routeheat.report.document import (
     table_block,
 )
 from routeheat.report.matter import Matter
-from routeheat.report.methods import METHODS
+from routeheat.report.measure_next import next_heat
+from routeheat.report.methods import methods_of
+from routeheat.report.scale import at_scale
+from routeheat.report.screening import screened
+from routeheat.report.waste import wasted
 
 
 @dataclass(frozen=True, slots=True)
@@ -62,8 +67,8 @@ def _question(matter: Matter) -> Iterator[Block]:
             yield Paragraph(as_rich(text))
 
 
-def _methods(_: Matter) -> Iterator[Block]:
-    yield Bullets(tuple(map(line, METHODS)))
+def _methods(matter: Matter) -> Iterator[Block]:
+    yield Bullets(tuple(map(line, methods_of(matter.sheet))))
 
 
 def _data(matter: Matter) -> Iterator[Block]:
@@ -89,6 +94,11 @@ PARTS: tuple[Part, ...] = (
     Part("combinations", "Combinations of known heats", results.combinations),
     Part("not_entered", "What is not entered", standing.not_entered),
     Part("assumptions", "Assumptions", standing.assumptions),
+    Part("reconciled", "Agreement of the known heats", reconciled),
+    Part("next", "What to measure next", next_heat),
+    Part("scale", "Heat at scale", at_scale),
+    Part("screening", "Energetic screening", screened),
+    Part("waste", "Waste", wasted),
     Part("methods", "Methods and sources", _methods),
     Part("data", "Data", _data),
     Part("sheet", "Appendix: the route sheet", _typed),

@@ -72,7 +72,7 @@ def _assumed(matter: Matter) -> Iterator[str]:
             labels = [step.label for step in item.steps if not step.side and step.counted_loss == loss]
             if labels:
                 yield f"Route {name}: loss counted as {loss} ({meaning}) in {', '.join(labels)}."
-        yield from (f"Route {name}: {note}." for note in temperature_note(item.steps))
+        yield from (f"Route {name}: {note}." for note in temperature_note(item.steps, item.basis))
         for step in item.steps:
             if step.origin.startswith("derived"):
                 yield f"Route {name}, {step.label}: {step.origin}."

@@ -15,7 +15,7 @@ _STYLES = ("", "sub", "sup", "italic")
 def table_content(table: Table) -> dict[str, Any]:
     """A table as JSON-safe content."""
     return {
-        "title": table.title,
+        "title": _rich(table.title),
         "columns": [
             {"key": c.key, "header": _rich(c.header), "unit": c.unit, "align": c.align, "decimals": c.decimals}
             for c in table.columns
@@ -30,7 +30,8 @@ def _cell(cell: Cell) -> Any:
     if cell is None or isinstance(cell, str | float):
         return cell
     if isinstance(cell, Reading):
-        return {"value": cell.value, "u": cell.u, "k": cell.k, "at_least": cell.at_least, "words": cell.words}
+        return {"value": cell.value, "u": cell.u, "k": cell.k, "at_least": cell.at_least, "words": cell.words,
+                "estimated": cell.estimated}  # fmt: skip
     return _rich(cell) if isinstance(cell, tuple) else {"exact": str(cell)}
 
 
@@ -49,7 +50,7 @@ def read_table(content: Any) -> Table:
             raise ValueError("a column is aligned left or right")
         rows = tuple(tuple(_read_cell(cell) for cell in row) for row in content["rows"])
         notes = tuple(_str(note) for note in content["notes"])
-        return Table(_str(content["title"]), columns, rows, notes, frozenset(int(i) for i in content["strong"]))
+        return Table(_read_rich(content["title"]), columns, rows, notes, frozenset(int(i) for i in content["strong"]))
     except (KeyError, TypeError, ValueError) as problem:
         raise RouteheatError(f"this is no table of the interchange form: {problem!r}") from problem
 
@@ -65,7 +66,7 @@ def _read_cell(cell: Any) -> Cell:
     value, u = cell["value"], cell["u"]
     return Reading(
         None if value is None else float(value), None if u is None else float(u), float(cell["k"]),
-        bool(cell["at_least"]), _str(cell["words"]),
+        bool(cell["at_least"]), _str(cell["words"]), bool(cell.get("estimated", False)),
     )  # fmt: skip
 
 

@@ -5,6 +5,7 @@ from __future__ import annotations
 import datetime
 import io
 import zipfile
+from itertools import pairwise
 from typing import Any
 
 from routeheat.draw.paper import rendered
@@ -67,8 +68,10 @@ class _Writer:
         self._runs(self.file.add_paragraph(style=_NOTE), document.caution)
         for section in document.sections:
             self.file.add_heading(section.heading, level=1)
-            for block in section.blocks:
+            for block, following in pairwise((*section.blocks, None)):
                 self._block(block)
+                if isinstance(block, Paragraph) and isinstance(following, TableBlock | FigureBlock):
+                    self.file.paragraphs[-1].paragraph_format.keep_with_next = True
 
     def _block(self, block: Block) -> None:
         if isinstance(block, Heading):
@@ -119,7 +122,7 @@ class _Writer:
             self._runs(paragraph, note)
 
     def _grid(self, grid: Grid) -> None:
-        from docx.enum.table import WD_TABLE_ALIGNMENT
+        from docx.enum.table import WD_CELL_VERTICAL_ALIGNMENT, WD_TABLE_ALIGNMENT
         from docx.shared import Pt
 
         table = self.file.add_table(rows=1 + len(grid.rows), cols=len(grid.header))
@@ -134,6 +137,8 @@ class _Writer:
             together = number < (len(grid.rows) if len(grid.rows) <= _SHORT_TABLE else 2)
             for cell, text, right, size in zip(row.cells, cells, grid.right, sizes, strict=True):
                 cell.width = size
+                if number == 0:
+                    cell.vertical_alignment = WD_CELL_VERTICAL_ALIGNMENT.BOTTOM
                 self._cell(cell.paragraphs[0], text, right=right, bold=strong, together=together)
             _row_properties(row, header=number == 0)
         _rules(table)
@@ -160,7 +165,7 @@ class _Writer:
             properties = shape._inline.docPr
             which = "" if len(parts) == 1 else f", part {number} of {len(parts)}"
             properties.set("name", f"Figure {block.number}{which}")
-            properties.set("descr", plain(line(block.drawing.alt)) + which)
+            properties.set("descr", block.drawing.alt + which)
         self._caption("Figure", block.number, block.caption, above=bool(block.notes))
         for note in block.notes:
             self._runs(self.file.add_paragraph(style=_NOTE), note)
@@ -268,12 +273,14 @@ def _rules(table: Any) -> None:
     borders = _element("w:tblBorders")
     for edge in ("top", "bottom"):
         borders.append(_element(f"w:{edge}", val="single", sz="10", space="0", color="1A1A1A"))
-    properties = table._tbl.tblPr
+    whole = table._tbl.tblPr
     # the schema fixes the order: borders stand before layout, margins and look
     later = {qn(f"w:{name}") for name in ("shd", "tblLayout", "tblCellMar", "tblLook")}
-    place = next((index for index, child in enumerate(properties) if child.tag in later), len(properties))
-    properties.insert(place, borders)
+    place = next((index for index, child in enumerate(whole) if child.tag in later), len(whole))
+    whole.insert(place, borders)
     for cell in table.rows[0].cells:
         edges = _element("w:tcBorders")
         edges.append(_element("w:bottom", val="single", sz="6", space="0", color="1A1A1A"))
-        cell._tc.get_or_add_tcPr().append(edges)
+        properties = cell._tc.get_or_add_tcPr()
+        aligned = properties.find(qn("w:vAlign"))
+        properties.insert(len(properties) if aligned is None else list(properties).index(aligned), edges)

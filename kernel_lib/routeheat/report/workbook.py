@@ -16,6 +16,7 @@ from typing import Any
 from routeheat.chem.route import Sheet
 from routeheat.chem.row import Rows
 from routeheat.present.flat import Flat, Head, Plain, flat
+from routeheat.present.markup import plain
 from routeheat.present.show import Shown
 from routeheat.present.table import Table
 from routeheat.present.text import display_width, visible
@@ -44,7 +45,7 @@ def write_workbook(item: Sheet | Shown | Table, path: str | Path, *, per: Any = 
     if isinstance(item, Sheet):
         content = pages(item, per)
     else:
-        content = {f"{number} {table.title}": (table,) for number, table in enumerate(every_table(item), 1)}
+        content = {f"{number} {plain(table.title)}": (table,) for number, table in enumerate(every_table(item), 1)}
     made = Path(path)
     write_whole(made, workbook_bytes(content))
     return made
@@ -95,7 +96,7 @@ def _fill(page: Any, tables: Iterable[Table], formats: _Formats) -> None:
     for number, table in enumerate(tables):
         content = flat(table)
         if table.title:
-            _write(page, line, 0, visible(table.title), formats, bold=True)
+            _write(page, line, 0, visible(plain(table.title)), formats, bold=True)
             line += 1
         for index, head in enumerate(content.heads):
             _write(

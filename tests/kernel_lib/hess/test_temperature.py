@@ -11,7 +11,8 @@ import pytest
 import routeheat as rh
 from routeheat.chem.heat import Datum, HeatSum
 from routeheat.chem.species import Species
-from routeheat.hess.temperature import Transition, at_temperature, temperature_warning
+from routeheat.hess.temperature import Transition, at_temperature
+from routeheat.hess.warming import temperature_warning
 from routeheat.known.heat_capacity import ConstantCp, HeatCapacity, Nasa7, PolynomialCp, Shomate
 
 WATER = "H2O(s) + H2O(l) + H2O(g) -> H2(g) + O2(g)"

@@ -5,7 +5,7 @@ from fractions import Fraction
 import pytest
 
 from routeheat.errors import UnknownName
-from routeheat.known.lookup import find_species, ion_formation, known_row, must_be_declared, row_label, rows_text
+from routeheat.known.lookup import find_species, known_row, must_be_declared, row_label, rows_text
 from routeheat.known.table import KnownSpecies, species_table
 from routeheat.process.sheet import read_sheet
 
@@ -91,26 +91,6 @@ def test_isomers_are_declared_even_when_they_are_small() -> None:
 
 def test_a_reference_state_makes_a_comment() -> None:
     assert rows_text((line("oxygen", "g"),)) == "known\n  # O2(g) is a reference state: zero by definition\n"
-
-
-@pytest.mark.parametrize(
-    ("name", "equation"),
-    [
-        ("sodium ion", "Na(s) + H^+(aq) -> Na^+(aq) + 1/2 H2(g)"),
-        ("chloride", "1/2 Cl2(g) + 1/2 H2(g) -> Cl^-(aq) + H^+(aq)"),
-        ("sulfate", "S(s, rhombic) + 2 O2(g) + H2(g) -> SO4^2-(aq) + 2 H^+(aq)"),
-        ("ammonium", "1/2 N2(g) + 3/2 H2(g) + H^+(aq) -> NH4^+(aq)"),
-        ("hydroxide", "1/2 O2(g) + H2(g) -> OH^-(aq) + H^+(aq)"),
-    ],
-)
-def test_an_ion_forms_on_the_scale_of_the_hydrogen_ion(name: str, equation: str) -> None:
-    assert ion_formation(line(name, "aq")).text == equation
-
-
-def test_every_ion_forms_in_a_balanced_reaction() -> None:
-    ions = [item for item in species_table() if item.formula.charge and not item.is_reference]
-    assert len(ions) >= 50
-    assert not [item.name for item in ions if not ion_formation(item).balanced]
 
 
 def test_the_whole_table_reads_as_one_sheet_of_balanced_rows() -> None:

@@ -149,7 +149,7 @@ def sheets(draw: st.DrawFn) -> str:
     return "\n".join(lines)
 
 
-@settings(max_examples=150, deadline=None)
+@settings(max_examples=80)
 @given(sheets())
 def test_generated_sheets_make_the_round_trip(text: str) -> None:
     sheet, faults = build_sheet(text)

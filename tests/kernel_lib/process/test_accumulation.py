@@ -110,7 +110,7 @@ def test_batch_is_one_without_a_notice(code: SimpleNamespace, plain: Step) -> No
     ({"Xac": "-0.1", "feed": "1 h"}, "between 0 and 1"),
     ({"Xac": "0.5", "feed": "0 h"}, "feed time"),
     ({"Xac": "0.5", "feed": "1 h", "fedpart": "100 %"}, "fedpart"),
-    ({"k1": "0 h^-1", "feed": "1 h"}, "k1 is not positive"),
+    ({"rate1": "0 h^-1", "feed": "1 h"}, "rate1 is not positive"),
 ])
 def test_impossible_inputs_are_faults(
     code: SimpleNamespace, plain: Step, keys: dict[str, object], words: str
@@ -121,23 +121,23 @@ def test_impossible_inputs_are_faults(
 
 
 def test_first_order_from_the_sheet(code: SimpleNamespace, plain: Step) -> None:
-    found = read(code, plain, k1="0.5 h^-1", feed="4 h")
+    found = read(code, plain, rate1="0.5 h^-1", feed="4 h")
     assert found.fraction.value == pytest.approx(0.4323, abs=1e-4)
-    minutes = read(code, plain, k1="0.5 h^-1", feed="240 min")
+    minutes = read(code, plain, rate1="0.5 h^-1", feed="240 min")
     assert minutes.fraction == found.fraction
 
 
 def test_uncertain_rate_constant_is_propagated(code: SimpleNamespace, plain: Step) -> None:
-    found = read(code, plain, k1="0.5 ± 0.1 h^-1", feed="4 h")
+    found = read(code, plain, rate1="0.5 ± 0.1 h^-1", feed="4 h")
     assert found.fraction.u == pytest.approx(0.1 * (first_order(0.49, 4) - first_order(0.51, 4)) / 0.02, rel=1e-3)
 
 
 def test_rate_constant_without_a_feed_time_is_not_used(code: SimpleNamespace, plain: Step) -> None:
-    assert "without a feed time" in read(code, plain, k1="0.5 h^-1").notices[0]
+    assert "without a feed time" in read(code, plain, rate1="0.5 h^-1").notices[0]
 
 
 def test_second_order_needs_to_know_what_is_fed(code: SimpleNamespace, plain: Step) -> None:
-    found = read(code, plain, k2="2 kg/(mol h)", feed="4 h")
+    found = read(code, plain, rate2="2 kg/(mol h)", feed="4 h")
     assert found.origin.startswith("second order")
     assert "stoichiometric amount is assumed" in found.notices[0]
 
@@ -146,7 +146,7 @@ def test_second_order_with_a_fed_limiting_reactant_equals_its_mirror(code: Simpl
     """Feeding the limiting reactant into 1.25 equivalents: never more than all of it is fed, and none is in excess."""
     step = code.step("S", "C2H4(g) + H2(g) -> C2H6(g)", "-100", conc="1", cp="2", equiv={"H2(g)": "1.25"},
                      limiting="C2H4(g)")
-    found = read(code, step, k2="2 kg/(mol h)", feed="4 h", fed=code.species("C2H4(g)"))
+    found = read(code, step, rate2="2 kg/(mol h)", feed="4 h", fed=code.species("C2H4(g)"))
     mirrored = worst_second_order(2 * 1.25 * 4, 0.8)
     assert found.fraction.value == pytest.approx(mirrored.fraction, rel=1e-9)
     assert found.notices == ()
