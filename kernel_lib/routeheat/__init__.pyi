@@ -22,6 +22,8 @@ from .hess.reconcile import Reconciled as Reconciled
 from .hess.reconcile import reconcile as reconcile
 from .hess.temperature import Corrected as Corrected
 from .hess.temperature import at_temperature as at_temperature
+from .known.estimate import Estimate as Estimate
+from .known.estimate import estimate_formation as estimate_formation
 from .known.lookup import Candidates as Candidates
 from .known.lookup import find_species as find_species
 from .known.lookup import known_row as known_row
@@ -58,9 +60,9 @@ from .report.markdown import markdown as markdown
 from .report.spreadsheet import read_known_heats as read_known_heats
 from .report.spreadsheet import write_known_heats as write_known_heats
 from .report.tables import csv_text as csv_text
+from .report.workbook import write_workbook as write_workbook
 from .report.write import report_bytes as report_bytes
 from .report.write import write_report as write_report
-from .report.workbook import write_workbook as write_workbook
 from .rerun.reference import Reference as Reference
 from .rerun.reference import reference as reference
 

@@ -133,8 +133,9 @@ class Unit:
 
     def _require(self, to: Unit) -> None:
         if self.dimension != to.dimension:
-            raise UnitError(f"{self.text or 'a pure number'} cannot be expressed in {to.text or 'a pure number'}",
-                            self.text)
+            raise UnitError(
+                f"{self.text or 'a pure number'} cannot be expressed in {to.text or 'a pure number'}", self.text
+            )
 
 
 def read_unit(text: str) -> Unit:

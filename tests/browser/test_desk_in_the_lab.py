@@ -183,11 +183,15 @@ def test_tabs_are_reached_and_changed_with_arrow_keys(desk: Any) -> None:
     page = sight.page
     page.focus(".rhd-tabs [aria-selected='true']")
     seen = []
-    for question in ("What happens in each step?", "What is this heat, and why?", "What is typed"):
+    questions = (
+        "What happens in each step?", "What is this heat, and why?", "Which heats are known", "Which one measurement",
+        "What does a step do at scale", "What is typed",
+    )  # fmt: skip
+    for question in questions:
         page.keyboard.press("ArrowRight")
         expect_text(sight, ".rhd-question", question)
         seen.append(page.evaluate("document.activeElement.dataset.view"))
-    assert seen == ["steps", "heat", "typed"]
+    assert seen == ["steps", "heat", "known", "measure", "scale", "typed"]
     assert sight.ask("print(desk.view)") == "typed"
     page.click(".rhd-tables tbody th button:text-is('B2')")
     chosen = page.evaluate("document.querySelector('.rhd-text').selectionStart")
@@ -218,7 +222,7 @@ def test_hostile_names_appear_as_text(desk: Any) -> None:
         .replace("SUB +", "<b>S</b> +")
     )
     sight = desk(cell(text))
-    for view in ("routes", "steps", "heat", "typed"):
+    for view in ("routes", "steps", "heat", "known", "measure", "scale", "typed"):
         sight.page.click(f".rhd-tabs [data-view='{view}']")
         sight.page.wait_for_selector(f".rhd-tabs [data-view='{view}'][aria-selected='true']")
         assert sight.page.evaluate("document.querySelectorAll('.rhd img, .rhd script, .rhd b').length") == 0

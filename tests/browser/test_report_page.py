@@ -71,3 +71,12 @@ def test_it_prints_on_a4_with_repeated_headers(opened: tuple[Any, list[str]]) ->
     texts = [item.extract_text() for item in printed.pages]
     assert sum("datum" in text and "as typed" in text for text in texts) >= 2
     assert "Contents" not in texts[0]
+
+
+def test_what_is_folded_on_the_screen_is_printed(opened: tuple[Any, list[str]], report: Path) -> None:
+    if "amine" not in report.name:
+        pytest.skip("nothing is folded")
+    page, _ = opened
+    assert not page.get_by_text("energy equivalent").first.is_visible()
+    printed = pypdf.PdfReader(io.BytesIO(page.pdf(prefer_css_page_size=True)))
+    assert sum(item.extract_text().count("energy equivalent") for item in printed.pages) == 7

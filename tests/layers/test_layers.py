@@ -8,6 +8,7 @@ import sys
 from pathlib import Path
 
 import pytest
+
 import routeheat as rh
 
 ROOT = Path(__file__).parents[2]
@@ -29,9 +30,9 @@ def test_source_roots_are_plain_folders() -> None:
 @pytest.mark.parametrize("path", SOURCES, ids=lambda path: str(path.relative_to(ROOT)))
 def test_nobody_imports_through_the_source_root(path: Path) -> None:
     tree = ast.parse(path.read_text(encoding="utf-8"))
-    names = [
-        alias.name for node in ast.walk(tree) if isinstance(node, ast.Import) for alias in node.names
-    ] + [node.module or "" for node in ast.walk(tree) if isinstance(node, ast.ImportFrom)]
+    names = [alias.name for node in ast.walk(tree) if isinstance(node, ast.Import) for alias in node.names] + [
+        node.module or "" for node in ast.walk(tree) if isinstance(node, ast.ImportFrom)
+    ]
     assert not [name for name in names if name.startswith(("kernel_lib", "widgets"))]
 
 

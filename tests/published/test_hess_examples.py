@@ -6,6 +6,7 @@ from dataclasses import dataclass
 from fractions import Fraction
 
 import pytest
+
 import routeheat as rh
 
 OPENSTAX = "OpenStax, Chemistry 2e (2019), sec. 5.3"

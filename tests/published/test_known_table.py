@@ -446,8 +446,7 @@ GAS_REACTIONS = [
 def test_gas_reactions_agree_with_the_nasa7_data_of_cantera(equation: str, temperature: float) -> None:
     cantera = pytest.importorskip("cantera")
     theirs = sum(
-        nu * cantera_species(cantera)[CANTERA[name]].thermo.h(temperature) / 1e6
-        for name, nu in sides(equation).items()
+        nu * cantera_species(cantera)[CANTERA[name]].thermo.h(temperature) / 1e6 for name, nu in sides(equation).items()
     )
     assert heat_at(equation, temperature) == pytest.approx(theirs, abs=1.5)
 

@@ -19,9 +19,13 @@ from routeheat.process.levels import probability, severity
 ZERO_C = 273.15
 
 
-@pytest.mark.parametrize(("heat", "rise", "methanol", "height", "speed"), [
-    (-100.0, 50.0, 0.09, 10.0, 0.45), (-2000.0, 1000.0, 1.8, 204.0, 2.0),
-])
+@pytest.mark.parametrize(
+    ("heat", "rise", "methanol", "height", "speed"),
+    [
+        (-100.0, 50.0, 0.09, 10.0, 0.45),
+        (-2000.0, 1000.0, 1.8, 204.0, 2.0),
+    ],
+)
 def test_energy_equivalents(heat: float, rise: float, methanol: float, height: float, speed: float) -> None:
     """Stoessel, Thermal Safety of Chemical Processes (2008), ch. 2, table of energy equivalents (from memory)."""
     assert runaway.specific_adiabatic_rise(heat, 2.0) == pytest.approx(rise, abs=1.0)
@@ -80,10 +84,19 @@ def test_activation_energy_from_two_rates() -> None:
     assert runaway.activation_energy(5.0, 393.15, 20.0, 413.15) / 1000 == pytest.approx(93.6, abs=0.05)
 
 
-@pytest.mark.parametrize(("process", "mtsr", "mtt", "td24", "expected"), [
-    (50, 90, 110, 150, (1,)), (60, 85, 180, 150, (2,)), (80, 130, 110, 170, (3,)), (70, 190, 110, 160, (4,)),
-    (60, 200, 250, 150, (5,)), (100, 105, 111, 135, (1,)), (20, 65, 65, 120, (3,)), (60, 90, None, 150, (3, 2, 1)),
-])
+@pytest.mark.parametrize(
+    ("process", "mtsr", "mtt", "td24", "expected"),
+    [
+        (50, 90, 110, 150, (1,)),
+        (60, 85, 180, 150, (2,)),
+        (80, 130, 110, 170, (3,)),
+        (70, 190, 110, 160, (4,)),
+        (60, 200, 250, 150, (5,)),
+        (100, 105, 111, 135, (1,)),
+        (20, 65, 65, 120, (3,)),
+        (60, 90, None, 150, (3, 2, 1)),
+    ],
+)
 def test_criticality_class(
     process: float, mtsr: float, mtt: float | None, td24: float, expected: tuple[int, ...]
 ) -> None:
@@ -101,9 +114,15 @@ def test_no_class_without_td24() -> None:
     assert found.text == "not classifiable: TD24 missing"
 
 
-@pytest.mark.parametrize(("rise", "gas", "word"), [
-    (45, False, "low"), (45, True, "at least medium"), (180, False, "medium"), (250, False, "high"),
-])
+@pytest.mark.parametrize(
+    ("rise", "gas", "word"),
+    [
+        (45, False, "low"),
+        (45, True, "at least medium"),
+        (180, False, "medium"),
+        (250, False, "high"),
+    ],
+)
 def test_severity_on_three_levels(rise: float, gas: bool, word: str) -> None:
     """Stoessel 2008, ch. 3: below 50 K without pressure low, 50 to 200 K medium, above high (from memory)."""
     assert severity(rise, gas=gas).word == word
@@ -147,10 +166,17 @@ def test_gas_volume_flow() -> None:
     assert feed.gas_volume(150.0, 20.0, 101325.0) == pytest.approx(3.61, abs=0.01)
 
 
-@pytest.mark.parametrize(("formula", "published"), [
-    ("C7H5N3O6", -74.0), ("C3H6N6O6", -21.6), ("H4N2O3", 20.0), ("C3H5N3O9", 3.5), ("CH3NO2", -39.3),
-    ("C(NO2)4", 49.0),
-])
+@pytest.mark.parametrize(
+    ("formula", "published"),
+    [
+        ("C7H5N3O6", -74.0),
+        ("C3H6N6O6", -21.6),
+        ("H4N2O3", 20.0),
+        ("C3H5N3O9", 3.5),
+        ("CH3NO2", -39.3),
+        ("C(NO2)4", 49.0),
+    ],
+)
 def test_oxygen_balance(formula: str, published: float) -> None:
     """Meyer, Köhler, Homburg, Explosives, tables (from memory); the formula as in UN and GHS guidance."""
     assert oxygen_balance(read_formula(formula)).per_cent == pytest.approx(published, abs=0.1)

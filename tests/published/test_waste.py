@@ -16,10 +16,13 @@ def test_atom_economy_of_ibuprofen(reactants: float, published: float) -> None:
     assert atom_economy(206.28, reactants) == pytest.approx(published, abs=0.3)
 
 
-@pytest.mark.parametrize(("equation", "published"), [
-    ("C6H6(l) + 9/2 O2(g) -> C4H2O3(s) + 2 CO2(g) + 2 H2O(l)", 44.1),
-    ("C4H8(g) + 3 O2(g) -> C4H2O3(s) + 3 H2O(l)", 64.5),
-])
+@pytest.mark.parametrize(
+    ("equation", "published"),
+    [
+        ("C6H6(l) + 9/2 O2(g) -> C4H2O3(s) + 2 CO2(g) + 2 H2O(l)", 44.1),
+        ("C4H8(g) + 3 O2(g) -> C4H2O3(s) + 3 H2O(l)", 64.5),
+    ],
+)
 def test_atom_economy_of_maleic_anhydride(equation: str, published: float) -> None:
     """Lancaster, Green Chemistry (from memory)."""
     sheet = rh.read_sheet(f"route A makes C4H2O3(s)\n  [A1] {equation} | dH -1000 kJ | yield 70 %")

@@ -44,6 +44,22 @@ def sheet_text() -> str:
 
 
 @pytest.fixture
+def run_code(monkeypatch: pytest.MonkeyPatch) -> Callable[[str], tuple[dict[str, Any], list[Any]]]:
+    """Runs code as a cell would: the names it leaves, and what it displays."""
+    import IPython.display
+
+    displayed: list[Any] = []
+    monkeypatch.setattr(IPython.display, "display", lambda *items: displayed.extend(items))
+
+    def run(code: str) -> tuple[dict[str, Any], list[Any]]:
+        names: dict[str, Any] = {}
+        exec(compile(code, "cell", "exec"), names)
+        return names, displayed
+
+    return run
+
+
+@pytest.fixture
 def make_desk() -> Iterator[Callable[..., Any]]:
     """Makes desks and closes them behind the test."""
     made: list[Any] = []

@@ -70,7 +70,7 @@ def test_switching_the_view_does_not_read_the_text_again(
 ) -> None:
     desk = make_desk(text=sheet_text)
     monkeypatch.setattr(desk_module, "read_model", None)
-    for view in ("steps", "heat", "typed", "routes"):
+    for view in ("steps", "heat", "known", "measure", "scale", "typed", "routes"):
         desk.view = view
         assert desk.payload["view"] == view
 

@@ -11,7 +11,22 @@ that each view shows.
 May import: routeheat, ipywidgets, anywidget, traitlets, IPython; plotly inside the function that needs it.
 """
 
+from routeheat_widgets._moved import moved
 from routeheat_widgets.desk import RouteDesk
+from routeheat_widgets.known_heats import KnownHeats, OpenCycles, known_heats, open_cycles
+from routeheat_widgets.measure_next import measure_next
 from routeheat_widgets.typed import Typed
+from routeheat_widgets.what_if import WhatIf, what_if
 
-__all__ = ["RouteDesk", "Typed"]
+__all__ = [
+    "KnownHeats",
+    "OpenCycles",
+    "RouteDesk",
+    "Typed",
+    "WhatIf",
+    "known_heats",
+    "measure_next",
+    "moved",
+    "open_cycles",
+    "what_if",
+]

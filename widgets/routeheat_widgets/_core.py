@@ -20,14 +20,16 @@ import traitlets
 from routeheat import RouteheatError, UnknownName
 from routeheat.present.html import stylesheet
 from routeheat_widgets import _twin
+from routeheat_widgets._export import Taken, take
 from routeheat_widgets._figure import DeskFigure
 from routeheat_widgets._file import FileState, SheetFile
 from routeheat_widgets._model import DeskModel, clean_text, read_model
+from routeheat_widgets._moved import MOVABLE
 from routeheat_widgets._payload import VIEWS, Shown, sheet_content, view_content, view_named
 from routeheat_widgets._subshell import release
 
-_SCRIPTS = ("editor.js", "page.js", "desk.js")
-CHOICES = ("route", "target", "show", "per", "batch", "product")
+_SCRIPTS = ("editor.js", "take.js", "controls.js", "page.js", "desk.js")
+CHOICES = ("route", "target", "show", "per", "batch", "product", "known", "of", "attainable", "step", "scale", *MOVABLE)
 """Names of what a reader can choose above the views."""
 _FIRST_WIDTH = 640.0
 _NARROWEST, _WIDEST = 280.0, 2000.0
@@ -48,6 +50,14 @@ def style() -> str:
     """The rules of the page: those of every table, then the desk's own."""
     own = files("routeheat_widgets").joinpath("desk.css").read_text(encoding="utf-8")
     return f"{stylesheet()}\n{own}"
+
+
+def _chosen(now: Mapping[str, str], choices: Mapping[str, str]) -> dict[str, str]:
+    """The options with ``choices``; values moved in one step are not carried to another."""
+    kept = dict(now)
+    if choices.get("step", now.get("step")) != now.get("step"):
+        kept = {key: value for key, value in kept.items() if key not in MOVABLE}
+    return {**kept, **choices}
 
 
 @dataclass(frozen=True, slots=True)
@@ -118,7 +128,7 @@ class DeskCore(anywidget.AnyWidget):
             if "text" in fields:
                 fields["revision"] = self._wanted.revision + 1
             if choices is not None:
-                fields["options"] = {**self._wanted.options, **choices}
+                fields["options"] = _chosen(self._wanted.options, choices)
             wanted = self._wanted = replace(self._wanted, turn=self._wanted.turn + 1, **fields)
         with self._work:
             if wanted is not self._wanted:
@@ -258,10 +268,20 @@ class DeskCore(anywidget.AnyWidget):
         key, value = str(content["key"]), str(content["value"])
         if key == "view":
             self._change(view=view_named(value).key)
+        elif key == "moves":
+            self._change(choices=dict.fromkeys(MOVABLE, ""))
+        elif key in MOVABLE:
+            self._change(choices={**self._step_shown(), key: value})
         elif key in CHOICES:
             self._change(choices={key: value})
         else:
             raise UnknownName("choice", key, CHOICES)
+
+    def _step_shown(self) -> dict[str, str]:
+        """The step whose values the page moves, so that they stay with it whatever is typed meanwhile."""
+        with self._lock:
+            controls = self._shown.content["controls"]
+        return {item["key"]: item["value"] for item in controls if item["key"] == "step"}
 
     def _on_width(self, content: Mapping[str, Any]) -> None:
         width = min(max(float(content["width"]), _NARROWEST), _WIDEST)
@@ -280,6 +300,30 @@ class DeskCore(anywidget.AnyWidget):
             with self._lock:
                 self._publish()
 
+    def _on_take(self, content: Mapping[str, Any]) -> None:
+        """Answer the asking page with a file, or with the reason why there is none; nothing is saved."""
+        answer = {"kind": "taken", "client": str(content["client"]), "serial": int(content["serial"])}
+        try:
+            found = self._take(content)
+        except Exception as problem:
+            self._answer({**answer, "error": str(problem).splitlines()[0] if str(problem) else type(problem).__name__})
+            if not isinstance(problem, RouteheatError):
+                raise
+            return
+        self._answer({**answer, "name": found.name, "mime": found.mime}, [found.data])
+
+    def _take(self, content: Mapping[str, Any]) -> Taken:
+        with self._work:
+            model, picture, options = self._model, self._shown.picture, self._wanted.options
+        width, index = str(content.get("width", "84 mm")), int(content.get("index", 0))
+        return take(model, picture, options, str(content["what"]), str(content["form"]), width=width, index=index)
+
+    def _answer(self, content: Mapping[str, Any], buffers: list[bytes] | None = None) -> None:
+        try:
+            self.send(content, buffers)
+        finally:
+            release(self.comm)
+
 
 _HANDLERS: dict[str, Callable[[DeskCore, Mapping[str, Any]], None]] = {
     "edit": DeskCore._on_edit,
@@ -287,4 +331,5 @@ _HANDLERS: dict[str, Callable[[DeskCore, Mapping[str, Any]], None]] = {
     "width": DeskCore._on_width,
     "file": DeskCore._on_file,
     "figure": DeskCore._on_figure,
+    "take": DeskCore._on_take,
 }

@@ -8,8 +8,7 @@ from dataclasses import dataclass, field
 from typing import ClassVar
 
 from routeheat.chem.heat import HeatSum
-from routeheat.draw import Drawable
-from routeheat.present.ladder import Ladder
+from routeheat.draw import Drawable, Drawing
 from routeheat.present.numbers import number
 from routeheat.present.table import Table
 from routeheat_widgets._model import DeskModel
@@ -27,13 +26,45 @@ class Control:
     value: str
     choices: tuple[tuple[str, str], ...] = ()
     """Pairs (value, what a reader sees); none for a field to type in."""
+    unit: str = ""
+    """Unit of a number to type or to move."""
+    hint: str = ""
+    """What stands in an empty field, or beside the value: ``typed 3 h``, ``not typed``."""
+    moves: bool = False
+    """True for a value of the sheet that is moved here without touching the text."""
+    limits: tuple[float, float, float] | None = None
+    """Lowest, highest and step of a slider; ``None`` for a field alone."""
+
+
+@dataclass(frozen=True, slots=True)
+class Bars:
+    """Small bars beside the numbers of one column."""
+
+    table: int
+    """Index of the table."""
+    column: str
+    """Key of the column."""
+    cells: tuple[str, ...]
+    """SVG elements without any typed text, one a row; empty for none."""
+
+
+@dataclass(frozen=True, slots=True)
+class Write:
+    """An edit of the typed text that the page may make: one stretch of it, replaced."""
+
+    start: int
+    end: int
+    """Characters ``start`` to ``end`` of the text are replaced."""
+    text: str
+    words: str
+    """What it does: ``feed 4 h in [A1]``."""
 
 
 @dataclass(frozen=True, slots=True)
 class Picture:
     """What a view shows of a model."""
 
-    drawn: Ladder | Drawable | None
+    drawn: Drawing | Drawable | None
     """What the diagram is made of; ``None`` for a view, or a state, without one."""
     tables: tuple[Table, ...]
     code: tuple[str, ...]
@@ -44,6 +75,15 @@ class Picture:
     """More to read about an arrow, by (column title, label): pairs (heading, text)."""
     empty: str = ""
     """What to say when there is nothing to show yet."""
+    name: str = ""
+    """What it is of, for names of files: ``route A``."""
+    more: tuple[tuple[str, Drawing], ...] = ()
+    """Further diagrams below the first, each with code that names it."""
+    bars: tuple[Bars, ...] = ()
+    search: bool = False
+    """True when a reader will want to search the rows of the first table."""
+    write: Write | None = None
+    """What *Write into the sheet* would do; ``None`` when nothing is moved or it cannot be written."""
 
 
 class View(ABC):

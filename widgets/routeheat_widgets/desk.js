@@ -22,9 +22,11 @@ function render({ model, el }) {
   let sentWidth = 0;
 
   const editor = makeEditor(client, send, say);
-  const page = makePage(client, send, (line) => editor.goTo(line));
+  const page = makePage(client, send, (line) => editor.goTo(line), (plan) => editor.replace(plan));
+  const take = makeTake(client, send);
   const root = h("div", { class: "rhd" },
-    h("div", { class: "rhd-bar" }, file, note), h("div", { class: "rhd-panes" }, editor.el, page.el), caution);
+    h("div", { class: "rhd-bar" }, file, note), h("div", { class: "rhd-panes" }, editor.el, page.el), take.el,
+    caution);
 
   function drawFile(state) {
     const key = JSON.stringify(state);
@@ -63,6 +65,7 @@ function render({ model, el }) {
     root.style.setProperty("--rhd-height", `${payload.height}px`);
     editor.update(payload);
     page.update(payload);
+    take.update(payload);
     caution.textContent = payload.caution;
     drawFile(payload.file);
     drawPlotly(payload.figure);
@@ -100,6 +103,7 @@ function render({ model, el }) {
   });
   model.on("change:payload", update);
   model.on("comm_live_update", lost);
+  model.on("msg:custom", take.receive);
   update();
 
   return () => {
@@ -110,6 +114,8 @@ function render({ model, el }) {
     plotly?.remove();
     model.off("change:payload", update);
     model.off("comm_live_update", lost);
+    model.off("msg:custom", take.receive);
+    take.destroy();
     root.remove();
   };
 }

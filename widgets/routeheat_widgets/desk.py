@@ -39,8 +39,8 @@ class RouteDesk(DeskCore):
         height: int = 600,
         **unknown: object,
     ) -> None:
-        """``view`` is ``routes``, ``steps``, ``heat`` or ``typed``; ``per`` the basis of the routes (``mol``, ``kg``,
-        ``12 kg``); ``height`` the height of the desk in px.
+        """``view`` is ``routes``, ``steps``, ``heat``, ``known``, ``measure``, ``scale`` or ``typed``; ``per`` the
+        basis of the routes (``mol``, ``kg``, ``12 kg``); ``height`` the height of the desk in px.
 
         Raises :class:`~routeheat.errors.UnknownName` for any other keyword, ``OSError`` when the file cannot be read,
         :class:`~routeheat.errors.RouteheatError` when it is no UTF-8 text. Faults in the text are shown, not raised.
@@ -92,7 +92,7 @@ class RouteDesk(DeskCore):
 
     @property
     def view(self) -> str:
-        """Key of the shown view: ``routes``, ``steps``, ``heat`` or ``typed``."""
+        """Key of the shown view, as in :meth:`__init__`."""
         return self._wanted.view
 
     @view.setter

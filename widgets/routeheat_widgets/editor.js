@@ -216,8 +216,27 @@ function makeEditor(client, send, say) {
   // the notebook's own shortcuts must not act on what is typed here
   for (const name of ["keydown", "keypress", "keyup"]) area.addEventListener(name, (event) => event.stopPropagation());
 
+  // Replace a stretch of the text the kernel knows, as one edit that the browser's own undo takes back.
+  function replace(plan) {
+    if (!plan || area.readOnly) return;
+    if (area.value !== state.last?.text) {
+      say("The text has just changed: look at the new picture first.");
+      return;
+    }
+    area.focus({ preventScroll: true });
+    area.setSelectionRange(plan.start, plan.end);
+    if (!area.ownerDocument.execCommand("insertText", false, plan.text)) {
+      area.setRangeText(plan.text, plan.start, plan.end, "end");
+      onInput();
+    }
+    area.setSelectionRange(plan.start, plan.start + plan.text.length);
+    const line = area.value.slice(0, plan.start).split("\n").length;
+    area.scrollTop = Math.max(0, (line - 1) * LINE - area.clientHeight / 3);
+    follow();
+  }
+
   return {
-    el, update, goTo,
+    el, update, goTo, replace,
     freeze() {
       area.readOnly = true;
       // in a text that cannot be edited the notebook would take letters for shortcuts

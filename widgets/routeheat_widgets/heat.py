@@ -53,14 +53,14 @@ class HeatView(View):
                 "except rh.OutOfReach as reason:",
                 "    result = rh.Refusal(target.label, target.reaction, reason)",
             )
-            return Picture(None, refused.tables(), refusing, uses)
+            return Picture(None, refused.tables(), refusing, uses, name=options["target"])
         others = rh.alternatives(result, _OTHERS)
         tables = (*result.tables(), *(() if result.unique else (_other_table(result, others),)))
         lines = [code, "result = rh.combine(target, sheet.known)"]
         if not result.unique:
             lines.append(f"others = rh.alternatives(result, {_OTHERS})")
         details = {("direct", result.name): contributors(result.heat)}
-        return Picture(result, tables, tuple(lines), uses, details)
+        return Picture(result, tables, tuple(lines), uses, details, name=options["target"])
 
 
 def _targets(model: DeskModel) -> dict[str, tuple[str, Row, str]]:

@@ -1,14 +1,15 @@
 // The views: tabs, choices, the diagram with its card, tables, and the code that makes the same thing.
 
-const CARD = "Point at an arrow, or move to it with the Tab key, to read its equation, basis, source and what makes " +
+const CARD = "Point at an arrow or a row, or move to it with the Tab key, to read its equation, basis, source and what makes " +
   "its uncertainty. Click it or press Enter to go to its line.";
 
 const SMALLEST = 0.66; // smallest scale at which a diagram is shown
 
-function makePage(client, send, goTo) {
+function makePage(client, send, goTo, write) {
   const tabs = h("div", { class: "rhd-tabs", role: "tablist", "aria-label": "Questions" });
   const question = h("h3", { class: "rhd-question" });
   const controls = h("div", { class: "rhd-controls" });
+  const moves = makeMoves(send, () => write(payload.write));
   const status = h("div", { class: "rhd-status", role: "status", tabindex: "-1" });
   const figure = h("div", { class: "rhd-figure" });
   const card = h("div", { class: "rhd-card", "aria-live": "off" });
@@ -21,10 +22,16 @@ function makePage(client, send, goTo) {
   const copy = h("button", { type: "button", class: "rhd-button" }, "Copy");
   const noCode = h("p", { class: "rhd-empty" },
     "While a line is broken there is no code for this picture: it is made of earlier lines too.");
+  const saving = h("pre", { class: "rhd-code rhd-saving", tabindex: "0", "aria-label": "Code that saves files" });
+  const savingWords = h("p", { class: "rhd-empty" }, "And to save it in files, after that:");
   const twin = h("details", { class: "rhd-twin-code" }, h("summary", {}, "Code that makes the same in a cell"),
-    copy, code, noCode);
+    copy, code, noCode, savingWords, saving);
+  const search = h("input", { type: "search", size: "24", placeholder: "label, formula, source …" });
+  const found = h("span", { class: "rhd-hint", role: "status" });
+  const searching = h("div", { class: "rhd-search", role: "search" }, h("label", {}, h("span", {}, "Search"), search),
+    found);
   const panel = h("div", { class: "rhd-panel", role: "tabpanel", id: `rhd-panel-${client}`, tabindex: "0" },
-    question, controls, status, problem, empty, figure, explore, slot, tables, twin);
+    question, controls, moves.el, status, problem, empty, figure, explore, slot, searching, tables, twin);
   // keys pressed here are for the desk: the notebook's one-letter shortcuts would delete or run cells
   const el = h("section", { class: "rhd-views", "aria-label": "Views", "data-lm-suppress-shortcuts": "true" },
     tabs, panel, card);
@@ -62,37 +69,27 @@ function makePage(client, send, goTo) {
     next.click();
   });
 
-  function makeControl(control) {
-    const choose = (event) => send({ kind: "option", key: control.key, value: event.target.value });
-    const field = control.choices.length
-      ? h("select", { onchange: choose }, ...control.choices.map(([value, words]) => h("option", { value }, words)))
-      : h("input", { type: "text", size: "8", onchange: choose, placeholder: "12 kg", onkeydown: (event) => {
-        if (event.key === "Enter") choose(event);
-      } });
-    field.dataset.key = control.key;
-    return h("label", {}, h("span", {}, control.label), field);
-  }
-
   function drawControls() {
-    if (changed("controls", payload.controls.map(({ key, label, choices }) => [key, label, choices]))) {
+    const shape = payload.controls.map(({ value, hint, ...rest }) => rest);
+    if (changed("controls", [payload.view, shape])) {
       const active = el.getRootNode().activeElement;
-      const key = controls.contains(active) ? active.dataset.key : "";
-      controls.replaceChildren(...payload.controls.map(makeControl));
-      if (key) controls.querySelector(`[data-key='${key}']`)?.focus({ preventScroll: true });
+      const held = panel.contains(active) ? active.dataset : {};
+      controls.replaceChildren(...payload.controls.filter((c) => !c.moves).map((c) => makeControl(c, send)));
+      moves.rows.replaceChildren(...payload.controls.filter((c) => c.moves).map((c) => makeControl(c, send)));
+      const again = held.key ? `[data-key='${held.key}']` : held.slide ? `[data-slide='${held.slide}']` : "";
+      if (again) panel.querySelector(again)?.focus({ preventScroll: true });
     }
-    for (const control of payload.controls) {
-      const field = controls.querySelector(`[data-key='${control.key}']`);
-      const typing = field.tagName === "INPUT" && el.getRootNode().activeElement === field;
-      if (!typing && field.value !== control.value) field.value = control.value;
-    }
+    for (const control of payload.controls) setControl(panel, control);
+    moves.el.hidden = !payload.controls.some((control) => control.moves);
+    moves.update(payload.write);
   }
 
   function drawStatus() {
     panel.classList.toggle("rhd-kept", payload.kept.length > 0);
     const words = [...payload.kept, ...payload.left_out].join(" ");
-    if (changed("status", words)) {
-      status.textContent = words || "Up to date with the text.";
-      status.classList.toggle("rhd-quiet", !words);
+    if (changed("status", [words, Boolean(payload.write)])) {
+      status.textContent = words || (payload.write ? "With moved values; the text is unchanged." : "Up to date with the text.");
+      status.classList.toggle("rhd-quiet", !words && !payload.write);
     }
     const wrong = [payload.error && `Something went wrong: ${payload.error}`, ...payload.problem].filter(Boolean);
     if (changed("problem", wrong)) {
@@ -118,11 +115,11 @@ function makePage(client, send, goTo) {
   const nameOf = (arrow) => `${arrow.dataset.column}\n${arrow.dataset.label}`;
 
   function drawFigure() {
-    if (!changed("svg", payload.svg)) return;
+    if (!changed("svg", [payload.svg, payload.more_svg])) return;
     const active = el.getRootNode().activeElement;
     const held = figure.contains(active) ? nameOf(active) : "";
     const left = figure.scrollLeft;
-    figure.innerHTML = payload.svg; // made by the library, which escapes every string
+    figure.innerHTML = [payload.svg, ...payload.more_svg].join(""); // made by the library, which escapes every string
     speakTitles();
     figure.scrollLeft = left;
     figure.hidden = card.hidden = explore.hidden = !payload.svg;
@@ -167,7 +164,7 @@ function makePage(client, send, goTo) {
   });
 
   function drawTables() {
-    if (!changed("tables", [payload.tables, payload.lines])) return;
+    if (!changed("tables", [payload.tables, payload.bars, payload.lines])) return;
     tables.innerHTML = payload.tables; // made by the library, which escapes every string
     for (const head of tables.querySelectorAll("tbody th[scope='row']")) {
       const name = head.textContent;
@@ -177,7 +174,31 @@ function makePage(client, send, goTo) {
       link.append(...head.childNodes);
       head.append(link);
     }
+    const all = tables.querySelectorAll("table");
+    for (const bars of payload.bars) {
+      bars.cells.forEach((mark, index) => {
+        const cell = all[bars.table].tBodies[0].rows[index]?.cells[bars.column];
+        // made by the desk of numbers alone
+        if (mark && cell) cell.insertAdjacentHTML("beforeend", `<div>${mark}</div>`);
+      });
+    }
+    sift();
   }
+
+  // The search needs no kernel: rows that hold every word stay.
+  function sift() {
+    searching.hidden = !payload.search;
+    const words = payload.search ? search.value.toLowerCase().split(/\s+/).filter(Boolean) : [];
+    const rows = [...(tables.querySelector("table")?.tBodies[0].rows ?? [])];
+    let kept = 0;
+    for (const row of rows) {
+      const text = row.textContent.toLowerCase();
+      row.hidden = !words.every((word) => text.includes(word));
+      kept += row.hidden ? 0 : 1;
+    }
+    found.textContent = words.length ? `${kept} of ${rows.length} rows` : `${rows.length} rows`;
+  }
+  search.addEventListener("input", sift);
 
   copy.addEventListener("click", async () => {
     try {
@@ -214,6 +235,8 @@ function makePage(client, send, goTo) {
       explore.setAttribute("aria-expanded", String(Boolean(payload.figure)));
       explore.disabled = false;
       drawTables();
+      saving.textContent = payload.save_code;
+      saving.hidden = savingWords.hidden = !payload.save_code;
       code.textContent = payload.code;
       code.hidden = copy.hidden = !payload.code;
       noCode.hidden = Boolean(payload.code);

@@ -54,16 +54,18 @@ class Routes(View):
             route = alike[show.removeprefix("route ")]
             profile = rh.profile(route, per=per)
             code = (f"result = rh.profile(sheet.routes[{route.name!r}], per={per!r})",)
-            return Picture(profile, (profile.table(),), code, frozenset([("route", route.name)]), _details(profile))
+            uses = frozenset([("route", route.name)])
+            return Picture(profile, (profile.table(),), code, uses, _details(profile), name=f"route {route.name}")
         result = rh.compare_routes(alike, per=per)
+        name = f"routes to {product}"
         lines = [f"result = rh.compare_routes({_named(alike, routes)}, per={per!r})"]
         details = {key: value for item in result.profiles for key, value in _details(item).items()}
         uses = frozenset(("route", name) for name in alike)
         tables = (result.table(), result.difference_table(), result.closure_table())
         if show == "one axis":
             lines.append("diagram = result.ladder(overlay=True)")
-            return Picture(result.ladder(overlay=True), tables, tuple(lines), uses, details)
-        return Picture(result, tables, tuple(lines), uses, details)
+            return Picture(result.ladder(overlay=True), tables, tuple(lines), uses, details, name=f"{name} on one axis")
+        return Picture(result, tables, tuple(lines), uses, details, name=name)
 
 
 def per_of(options: Mapping[str, str]) -> str:

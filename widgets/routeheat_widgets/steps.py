@@ -41,16 +41,20 @@ class Steps(View):
         route = routes[options["route"]]
         uses = frozenset([("route", route.name)])
         diagram = rh.step_ladder(route)
+        name = f"steps of route {route.name}"
         code = [f"route = sheet.routes[{route.name!r}]"]
+        alone = Picture(
+            diagram, (), (*code, "result = diagram = rh.step_ladder(route)"), uses, _details(route), name=name
+        )
         if route.name in model.partial:
-            return Picture(diagram, (), (*code, "result = diagram = rh.step_ladder(route)"), uses, _details(route))
+            return alone
         try:
             tables = (rh.profile(route).table(),)
         except RouteError:
             # the steps by themselves are sound; only their sum is not, and its reason is among the faults
-            return Picture(diagram, (), (*code, "result = diagram = rh.step_ladder(route)"), uses, _details(route))
+            return alone
         code += ["result = rh.profile(route)", "diagram = rh.step_ladder(route)"]
-        return Picture(diagram, tables, tuple(code), uses, _details(route))
+        return Picture(diagram, tables, tuple(code), uses, _details(route), name=name)
 
 
 def _routes(model: DeskModel) -> dict[str, Route]:
@@ -63,7 +67,7 @@ def _details(route: Route) -> dict[tuple[str, str], Details]:
         heat = molar_heat(step, route.known, route.k).heat
         more: list[tuple[str, str]] = []
         if step.row.heat is not None:
-            more.append(("typed", step.row.heat.text))
+            more.append(("typed", step.row.heat.typed))
         if step.row.source:
             more.append(("source", step.row.source))
         if step.temperature is not None:

@@ -51,7 +51,7 @@ class TypedView(View):
     def render(self, model: DeskModel, options: Mapping[str, str]) -> Picture:  # noqa: ARG002
         """The tables of :class:`Typed`."""
         code = ("import routeheat_widgets as rw", "result = rw.Typed(sheet)")
-        return Picture(None, Typed(model.shown).tables(), code, everything(model))
+        return Picture(None, Typed(model.shown).tables(), code, everything(model), name="sheet as read")
 
 
 def _species(sheet: Sheet) -> Table:
@@ -126,7 +126,7 @@ def _steps(sheet: Sheet) -> list[Table]:
 
 
 def _heat(row: Row) -> str:
-    return "not entered" if row.heat is None else row.heat.text
+    return "not entered" if row.heat is None else row.heat.typed
 
 
 def _kept(row: Row) -> str:

@@ -18,10 +18,34 @@ __all__ = ["HYDROGEN_ISOTOPES", "Element", "Isotope", "elements", "isotopes", "w
 HYDROGEN_ISOTOPES: Mapping[str, str] = MappingProxyType({"D": "[2H]", "T": "[3H]"})
 """The two isotopes with a symbol of their own, and the general way to write them."""
 
-_NONMETALS = frozenset([
-    "H", "He", "B", "C", "N", "O", "F", "Ne", "Si", "P", "S", "Cl", "Ar", "As", "Se", "Br", "Kr", "Te", "I", "Xe",
-    "At", "Rn", "Ts", "Og",
-])
+_NONMETALS = frozenset(
+    [
+        "H",
+        "He",
+        "B",
+        "C",
+        "N",
+        "O",
+        "F",
+        "Ne",
+        "Si",
+        "P",
+        "S",
+        "Cl",
+        "Ar",
+        "As",
+        "Se",
+        "Br",
+        "Kr",
+        "Te",
+        "I",
+        "Xe",
+        "At",
+        "Rn",
+        "Ts",
+        "Og",
+    ]
+)
 
 
 @dataclass(frozen=True, slots=True)

@@ -249,4 +249,3 @@ def solve(rows: Mapping[L, Vector[K]], target: Vector[K]) -> Solution[L] | None:
         touching = [cycle for cycle in apart if not linked.isdisjoint(cycle)]
     kept = tuple(cycle for cycle in cycles if not linked.isdisjoint(cycle))
     return Solution(coefficients, tuple(label for label in rows if label in linked), kept)
-

@@ -40,10 +40,41 @@ _CLOSING = {"(": ")", "[": "]"}
 _ABBREVIATION = "an abbreviation? declare it as a species, with its formula"
 _AMBIGUOUS_SYMBOLS = frozenset(["D", "T", "Ac", "Ts", "Pr", "At"])
 _HEAVY_HYDROGEN = frozenset(["D2", "T2", "D2O", "T2O"])
-_COMMON = frozenset([
-    "H", "Li", "B", "C", "N", "O", "F", "Na", "Mg", "Al", "Si", "P", "S", "Cl", "K", "Ca", "Cr", "Mn", "Fe", "Ni",
-    "Cu", "Zn", "Br", "Ag", "Sn", "I", "Ba", "Pt", "Au", "Hg", "Pb",
-])
+_COMMON = frozenset(
+    [
+        "H",
+        "Li",
+        "B",
+        "C",
+        "N",
+        "O",
+        "F",
+        "Na",
+        "Mg",
+        "Al",
+        "Si",
+        "P",
+        "S",
+        "Cl",
+        "K",
+        "Ca",
+        "Cr",
+        "Mn",
+        "Fe",
+        "Ni",
+        "Cu",
+        "Zn",
+        "Br",
+        "Ag",
+        "Sn",
+        "I",
+        "Ba",
+        "Pt",
+        "Au",
+        "Hg",
+        "Pb",
+    ]
+)
 
 _NUMBER = re.compile(r"([0-9]+)(\.[0-9]+)?")
 _AMOUNT = re.compile(r"½|[0-9]+/[0-9]+|[0-9]+(?:\.[0-9]+)?")

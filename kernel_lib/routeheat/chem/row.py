@@ -59,7 +59,7 @@ class Row:
 
         For a heat taken from an analogue it is the difference from it, which is zero with a wide uncertainty.
         """
-        if self.heat is None:
+        if self.heat is None or (self.heat.analogue and self.heat.taken is None):
             return None
         if self.heat.amount is None:
             return Datum(self.label, symbol=self.heat.symbol, source=self.source, of=self.reaction.text)

@@ -59,9 +59,7 @@ def line_box(x: float, y: float, rich: Rich, kind: Kind, *, full: str = "", bold
     return TextBox(x, y, w, size * LINE, rich, "start", kind, size, bold=bold, full=full)
 
 
-def paragraph(
-    rich: Rich, kind: Kind, width: float, *, lines: int, bold: bool = False, centred: bool = False
-) -> Block:
+def paragraph(rich: Rich, kind: Kind, width: float, *, lines: int, bold: bool = False, centred: bool = False) -> Block:
     """A text wrapped to ``width`` px; where it had to be shortened its first line keeps the whole."""
     shown = visible_rich(rich)
     size = SIZES[kind]

@@ -167,6 +167,5 @@ def _whisker(arrow: ArrowMark, ends: tuple[float, float]) -> str:
     caps = f"M{px(x - 3.5)} {px(low)}h7M{px(x - 3.5)} {px(high)}h7" if arrow.complete else ""
     dashed = "" if arrow.complete else ' stroke-dasharray="3 2"'
     return (
-        f'<path class="{kind}" stroke="{colour}" stroke-width="1.1"{dashed} '
-        f'd="M{px(x)} {px(low)}V{px(high)}{caps}"/>'
+        f'<path class="{kind}" stroke="{colour}" stroke-width="1.1"{dashed} d="M{px(x)} {px(low)}V{px(high)}{caps}"/>'
     )

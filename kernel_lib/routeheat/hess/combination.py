@@ -17,12 +17,12 @@ from dataclasses import dataclass, field, replace
 from fractions import Fraction
 from typing import Any
 
+from routeheat.chem.exact import presolve, solve
 from routeheat.chem.heat import HeatSum
 from routeheat.chem.reaction import Reaction
 from routeheat.chem.row import Row, Rows
 from routeheat.errors import OutOfReach, UnitError
 from routeheat.hess import ledger
-from routeheat.chem.exact import presolve, solve
 from routeheat.hess.numbering import Numbering
 from routeheat.hess.reach import explain
 from routeheat.hess.shortest import Shortest, ranked, short_cycles
@@ -152,6 +152,7 @@ class Combination(Shown):
                 "value": None if heat.unknowns else float(heat.exact),
                 "u": heat.u,
                 "complete": heat.complete,
+                "estimated": list(heat.estimated),
                 "k": heat.k,
                 "text": heat.text,
                 "unit": "kJ/mol",
@@ -159,9 +160,7 @@ class Combination(Shown):
         }
 
 
-def combine(
-    target: Reaction | Row, known: Mapping[str, Row] | Iterable[Row], *, k: float | None = None
-) -> Combination:
+def combine(target: Reaction | Row, known: Mapping[str, Row] | Iterable[Row], *, k: float | None = None) -> Combination:
     """The preferred exact combination of known rows that gives ``target``.
 
     Preferred: fewest rows, then smallest ``Σ|c|``, then rows that come first in an order of their own: by equation as
@@ -230,6 +229,8 @@ def _unfit(row: Row) -> str:
         return "in the reaction mixture"
     if row.heat is None:
         return "no heat typed"
+    if row.heat.analogue and row.heat.taken is None:
+        return f"the heat of {row.heat.analogue}, which it is like, is not known"
     if row.heat.amount is not None and (row.heat.basis or row.heat.amount.unit != KJ_PER_MOL):
         try:
             row.heat.factor(row.reaction)

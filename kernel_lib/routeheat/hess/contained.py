@@ -108,11 +108,12 @@ def _adds(item: Counted, holder: Counted, effect: str) -> bool:
     meant = {effect, *_COVERS.get(effect, frozenset()) - set(included(holder.row))}
     if not effects & meant:
         return False
-    return item.side_of == holder.row.label or bool(_names(item.row) & _names(holder.row))
+    named = {species.name for species in holder.row.reaction.species}
+    return item.side_of == holder.row.label or bool(_subjects(item.row) & named)
 
 
-def _names(row: Row) -> frozenset[str]:
-    """Species of a row, without water where there are others: nearly every row has water."""
+def _subjects(row: Row) -> frozenset[str]:
+    """Names of what a row is about: water only where there is nothing else, because nearly every row has water."""
     names = frozenset(species.name for species in row.reaction.net)
     return names - {"H2O"} or names
 
@@ -121,8 +122,10 @@ def _effects(row: Row, forward: bool) -> set[str]:
     """What effect a row is, from its kind and from what changes in it; reversed when it is subtracted."""
     if row.kind == "neutralisation" or (row.kind == "solution" and len(row.reaction.products) > 1):
         return {row.kind} if forward else set()
-    found = _change(row.reaction if forward else row.reaction.scaled(Fraction(-1)))
-    return {found} if found else set()
+    if forward:
+        return {_change(row.reaction)} - {""}
+    # a dilution or a mixing that is run backwards takes heat out again
+    return {_change(row.reaction.scaled(Fraction(-1)))} - {"", "dilution", "mixing"}
 
 
 def _change(reaction: Reaction) -> str:
@@ -133,7 +136,10 @@ def _change(reaction: Reaction) -> str:
     if (before.name, before.formula) != (after.name, after.formula):
         return ""
     if after.phase == "aq":
-        return "dilution" if before.phase == "aq" else "solution"
+        if before.phase != "aq":
+            return "solution"
+        # from infinite dilution nothing is diluted further
+        return "dilution" if before.form else ""
     if after.phase in _SOLIDS:
         return "crystallisation" if before.phase in ("aq", "l") else ""
     if before.phase in _SOLIDS:

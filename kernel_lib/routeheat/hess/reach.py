@@ -16,11 +16,11 @@ from itertools import combinations
 from typing import Literal
 
 from routeheat.chem.balance import PHASE_CHANGES, completion, formation, imbalance_text
+from routeheat.chem.exact import Span, Vector, primitive
 from routeheat.chem.reaction import Reaction
 from routeheat.chem.row import Row
 from routeheat.chem.species import Species
 from routeheat.errors import OutOfReach
-from routeheat.chem.exact import Span, Vector, primitive
 from routeheat.hess.numbering import Numbering
 from routeheat.hess.shortest import alternatives, shortest
 from routeheat.present.numbers import MINUS, fraction

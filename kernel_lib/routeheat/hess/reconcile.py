@@ -247,7 +247,7 @@ def reconcile(
         residuals=_residuals(net, numbered, fit, fitted),
         suspects=_suspects(numbered, fit, dof),
         choices=made,
-        known=Rows(known.values(), k),
+        known=Rows(known.values(), k, known.unstated if isinstance(known, Rows) else None),
         fitted=fitted,
         k=k,
     )
@@ -284,9 +284,7 @@ def _cycles(net: Network, heat_capacities: HeatCapacities | None) -> tuple[Cycle
     return tuple(sorted(found, key=lambda cycle: len(cycle.terms)))
 
 
-def _residuals(
-    net: Network, numbered: list[str], fit: Fit | None, fitted: Adjusted
-) -> dict[str, float | None]:
+def _residuals(net: Network, numbered: list[str], fit: Fit | None, fitted: Adjusted) -> dict[str, float | None]:
     found: dict[str, float | None] = dict.fromkeys(net.rows)
     if fit is not None:
         for index, label in enumerate(numbered):

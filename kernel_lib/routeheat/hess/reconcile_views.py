@@ -25,18 +25,24 @@ def verdict(item: Reconciled) -> str:
     if item.p is None:
         return "no cycle with an uncertain row checks these heats: there is nothing to reconcile"
     if math.isinf(item.chi2):
-        return ("heats without any uncertainty contradict each other: no adjusted value until one of them is excluded "
-                "or gets an uncertainty")
+        return (
+            "heats without any uncertainty contradict each other: no adjusted value until one of them is excluded "
+            "or gets an uncertainty"
+        )
     statistics = f"chi-square {_general(item.chi2)} on {item.dof} degree{'s' if item.dof > 1 else ''} of freedom, "
     statistics += f"p = {_general(item.p)}, Birge ratio {_general(item.birge or 0.0)}"
     if not item.contradicts:
         return f"the heats agree within their uncertainties: {statistics}"
     if item.adjusted is None:
-        return (f"the heats contradict each other: {statistics}; no adjusted value until a row is excluded or widened, "
-                "or the contradiction is accepted with a reason")
+        return (
+            f"the heats contradict each other: {statistics}; no adjusted value until a row is excluded or widened, "
+            "or the contradiction is accepted with a reason"
+        )
     accepted = next(choice for choice in item.choices if choice.kind == "accept")
-    return (f"the heats contradict each other: {statistics}; {accepted.text}; the uncertainties of the adjusted "
-            "heats are not enlarged for it")
+    return (
+        f"the heats contradict each other: {statistics}; {accepted.text}; the uncertainties of the adjusted "
+        "heats are not enlarged for it"
+    )
 
 
 def _general(value: float) -> str:
@@ -64,8 +70,16 @@ def table(item: Reconciled) -> Table:
             lines.append((label, row.reaction.rich, heat, None, None, item.network.left_out[label]))
             continue
         residual = item.residuals[label]
-        lines.append((label, row.reaction.rich, item.network.heats[label].reading, _adjusted(item, label), residual,
-                      "no cycle checks it" if residual is None else ""))
+        lines.append(
+            (
+                label,
+                row.reaction.rich,
+                item.network.heats[label].reading,
+                _adjusted(item, label),
+                residual,
+                "no cycle checks it" if residual is None else "",
+            )
+        )
     columns = (
         Column("row", "row"),
         Column("equation", "equation"),
@@ -96,11 +110,15 @@ def notes(item: Reconciled) -> tuple[str, ...]:
     for label, heat in item.network.heats.items():
         for datum, _ in heat.terms[1:]:
             shared.setdefault(datum.label, []).append(label)
-    found += [f"{name}: its error is shared by {', '.join(labels)}, added to their own uncertainties"
-              for name, labels in shared.items()]
+    found += [
+        f"{name}: its error is shared by {', '.join(labels)}, added to their own uncertainties"
+        for name, labels in shared.items()
+    ]
     found += dict.fromkeys(cycle.temperatures for cycle in item.cycles if cycle.temperatures)
-    found.append(f"± is {coverage(item.k)}; exothermic is negative; a normalised residual is measured − adjusted over "
-                 "its standard uncertainty")
+    found.append(
+        f"± is {coverage(item.k)}; exothermic is negative; a normalised residual is measured − adjusted over "
+        "its standard uncertainty"
+    )
     return tuple(found)
 
 
@@ -172,13 +190,25 @@ def to_dict(item: Reconciled) -> dict[str, Any]:
         ],
         "left_out": dict(item.network.left_out),
         "cycles": [
-            {"text": cycle.text, "coefficients": dict(cycle.coefficients), "misclosure": float(cycle.misclosure.exact),
-             "u": cycle.u, "closes": cycle.closes, "temperatures": cycle.temperatures}
+            {
+                "text": cycle.text,
+                "coefficients": dict(cycle.coefficients),
+                "misclosure": float(cycle.misclosure.exact),
+                "u": cycle.u,
+                "closes": cycle.closes,
+                "temperatures": cycle.temperatures,
+            }
             for cycle in item.cycles
         ],
         "suspects": [
-            {"label": suspect.label, "gap": suspect.gap, "u": suspect.gap_u, "chi2": suspect.chi2,
-             "dof": suspect.dof, "p": suspect.p}
+            {
+                "label": suspect.label,
+                "gap": suspect.gap,
+                "u": suspect.gap_u,
+                "chi2": suspect.chi2,
+                "dof": suspect.dof,
+                "p": suspect.p,
+            }
             for suspect in item.suspects
         ],
         "choices": [

@@ -35,15 +35,22 @@ def table(item: Corrected) -> Table:
         lines.append((part.species.rich, part.coefficient, _kelvin(float(part.start), float(item.to)), change))
     for crossing in item.crossed:
         transition = crossing.transition
-        lines.append((f"{transition.low} → {transition.high}", crossing.coefficient,
-                      f"{number(float(transition.temperature), 2)} K", crossing.heat.reading))
+        lines.append(
+            (
+                f"{transition.low} → {transition.high}",
+                crossing.coefficient,
+                f"{number(float(transition.temperature), 2)} K",
+                crossing.heat.reading,
+            )
+        )
     missing = Reading(None, None, item.k, words="no value")
     strong = len(lines)
     lines.append(("correction", None, "", missing if item.correction is None else item.correction.reading))
     if item.before is not None:
         lines.append(("heat before", None, "", item.before.reading))
-    lines.append((f"heat at {number(float(item.to), 2)} K", None, "",
-                  missing if item.heat is None else item.heat.reading))
+    lines.append(
+        (f"heat at {number(float(item.to), 2)} K", None, "", missing if item.heat is None else item.heat.reading)
+    )
     columns = (
         Column("what", "species or transition"),
         Column("coefficient", "times", align="right"),
@@ -63,8 +70,10 @@ def _notes(item: Corrected) -> tuple[str, ...]:
     if item.reason:
         notes.append(f"no value: {item.reason}")
     if item.bound is not None:
-        notes.append(f"the correction would be {bound_words(item.bound)}, if every pure species without a heat "
-                     "capacity has between 0 and 40 J/(mol K) per atom")
+        notes.append(
+            f"the correction would be {bound_words(item.bound)}, if every pure species without a heat "
+            "capacity has between 0 and 40 J/(mol K) per atom"
+        )
     notes += item.notes
     if item.heat is not None and item.heat.terms:
         notes.append(f"± is {coverage(item.k)}; exothermic is negative")
@@ -77,8 +86,14 @@ def to_dict(item: Corrected) -> dict[str, Any]:
     def heat(of: Any) -> dict[str, Any] | None:
         if of is None:
             return None
-        return {"value": None if of.unknowns else float(of.exact), "u": of.u, "complete": of.complete, "k": of.k,
-                "text": of.text, "unit": "kJ/mol"}
+        return {
+            "value": None if of.unknowns else float(of.exact),
+            "u": of.u,
+            "complete": of.complete,
+            "k": of.k,
+            "text": of.text,
+            "unit": "kJ/mol",
+        }
 
     return {
         "name": item.name,
@@ -89,8 +104,14 @@ def to_dict(item: Corrected) -> dict[str, Any]:
         "correction": heat(item.correction),
         "reason": item.reason,
         "parts": [
-            {"species": part.species.text, "coefficient": str(part.coefficient), "start": float(part.start),
-             "end": part.end.text, "warming": None if part.problem else part.warming, "problem": part.problem}
+            {
+                "species": part.species.text,
+                "coefficient": str(part.coefficient),
+                "start": float(part.start),
+                "end": part.end.text,
+                "warming": None if part.problem else part.warming,
+                "problem": part.problem,
+            }
             for part in item.parts
         ],
         "crossed": [crossing.text for crossing in item.crossed],

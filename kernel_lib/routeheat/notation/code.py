@@ -49,11 +49,14 @@ def row(
     """A known row made in code.
 
     ``reaction`` is an equation, or ``formation of X``, ``combustion of X to …``, ``vaporisation of X``. ``heat`` is
-    typed text (``"-45.94(18) kJ/mol"``), or a pint quantity in energy per amount or per mass; with a quantity, ``u`` is
-    its uncertainty (a quantity of the same kind) with coverage factor ``k``, and ``of`` the species it is stated per.
-    Exothermic is negative. Raises :class:`~routeheat.errors.SheetFaults`, :class:`~routeheat.errors.UnitError`.
+    typed text (``"-45.94(18) kJ/mol"``, ``"dU -3225.63 kJ/mol"``, ``"Q -48.8 kJ for 3.12 g of X(s)"``), or a pint
+    quantity in energy per amount or per mass; with a quantity, ``u`` is its uncertainty (a quantity of the same kind)
+    with coverage factor ``k``, and ``of`` the species it is stated per. Exothermic is negative. Raises
+    :class:`~routeheat.errors.SheetFaults`, :class:`~routeheat.errors.UnitError`.
     """
-    text = f"[{label}] {reaction}" + (f" | dH {heat}" if isinstance(heat, str) else "")
+    text = f"[{label}] {reaction}"
+    if isinstance(heat, str):
+        text += f" | {heat}" if heat.split(" ")[0] in ("dU", "Q") else f" | dH {heat}"
     context = Context(SpeciesReader(species or {}), DEFAULT_K)
     read = read_row(Entry(_one_line(text)), context, "known")
     if read is not None:

@@ -1,7 +1,7 @@
 """Heats as typed: ``dH`` and ``dU`` per something, ``Q`` of a calorimeter run, and ``like`` another row.
 
-    heat     = quantity | energy "for" ( mass | amount ) "of" species [ "at" temperature ] | letter
-    analogue = label "±" number [ "kJ/mol" ] [ coverage ] [ "at" temperature ]
+heat     = quantity | energy "for" ( mass | amount ) "of" species [ "at" temperature ] | letter
+analogue = label "±" number [ "kJ/mol" ] [ coverage ] [ "at" temperature ]
 """
 
 from __future__ import annotations
@@ -16,7 +16,7 @@ from routeheat.notation.context import Context
 from routeheat.notation.keys import Key
 from routeheat.notation.quantity import Quantity, read_quantity, require_dimension
 from routeheat.notation.tokens import LABEL, Piece
-from routeheat.units import CELSIUS, KELVIN, KILOGRAM, KJ, KJ_PER_KG, KJ_PER_MOL, MOLE, PURE, is_unit_symbol
+from routeheat.units import CELSIUS, KELVIN, KILOGRAM, KJ, KJ_PER_KG, KJ_PER_MOL, MOLE, PERCENT, PURE, is_unit_symbol
 
 _LETTER = re.compile(r"[^\W\d_](?:_?[0-9]{1,3})?")
 _HEAT_KEYS: dict[str, HeatKey] = {"dH": "dH", "dU": "dU", "Q": "Q"}
@@ -28,9 +28,11 @@ def read_heat(key: Key, value: Piece, context: Context) -> Heat:
     if unknown is not None:
         return unknown
     run = re.search(r"\sfor\s", value.text)
-    if run is not None:
+    # a declared name behind "of" may hold the word too
+    if run is not None and (key.name == "Q" or not re.search(r"\sof\s", value.text[: run.start()])):
         if key.name == "dH":
-            value.refuse("a calorimeter run is typed behind Q", f"write Q {value.text}")
+            hint = f"write Q {value.text}, or dU for a run at constant volume"
+            value.refuse("a calorimeter run is typed behind Q", hint)
         return _run(key, value.part(0, run.start()).strip(), value.part(run.end()).strip(), context)
     if key.name == "Q":
         value.refuse("a heat of how much of what?", f"like {key.example}")
@@ -83,18 +85,20 @@ def read_analogue(key: Key, value: Piece, context: Context) -> Heat:
     """The value of ``like``: a heat taken from another row of the sheet, found when all rows are read."""
     match = re.match(r"\[?([^\s\]±]+)\]?\s*", value.text)
     if match is None:
-        value.refuse("like which row?", f"like {key.example}")
+        value.refuse("like which row?", f"write {key.example}")
     label = label_of(match[1], value)
     rest = value.part(match.end())
     if re.match(r"±|\+/-|\+-", rest.text) is None:
-        value.refuse("how far may it be off from its analogue?", f"like {key.name} {label} ± 25")
+        value.refuse("how far may it be off from its analogue?", f"write {key.name} {label} ± 25")
     # what may differ is read as a zero with its uncertainty
     quantity = read_quantity(Piece(f"0 {rest.text}", rest.line, rest.start - 2), context.sheet_k, "A1 ± 25 kJ/mol")
     if quantity.basis is not None or quantity.measured.spread is None or not quantity.measured.spread.half_width:
-        rest.refuse("an analogue is off by some kJ per mole of reaction as written", f"like {key.example}")
+        rest.refuse("an analogue is off by some kJ per mole of reaction as written", f"write {key.example}")
+    if quantity.measured.unit == PERCENT:
+        rest.refuse("how far an analogue may be off is typed in kJ/mol", f"write {key.example}")
     if quantity.measured.unit == PURE:
         quantity = replace(quantity, measured=replace(quantity.measured, unit=KJ_PER_MOL))
-    measured = require_dimension(quantity, KJ_PER_MOL, f"in kJ/mol, like {key.example}")
+    measured = require_dimension(quantity, KJ_PER_MOL, f"write {key.example} kJ/mol")
     at = None if quantity.temperature is None else _temperature(quantity.temperature, context)
     note_assumed(quantity, value, context)
     return Heat(measured, None, "", at, "like", None, label)

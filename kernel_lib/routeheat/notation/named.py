@@ -143,7 +143,7 @@ def _water(solvent: Piece, reader: SpeciesReader) -> str:
     if what.text.lower() != "water":
         species = reader.species(what)
         if species.formula is None or species.formula.composition != {"H": 2, "O": 1} or species.formula.charge:
-            hint = f"say what forms, like solution of X(s) to X(l, in {what.text[:20]})"
+            hint = f"say what forms, like solution of X(s) to X(l, in {species.name[:20]})"
             what.refuse("only water is a solvent here", hint)
         if species.phase not in ("", "l"):
             what.refuse(f"water dissolves as (l), not as {species.state}", "write H2O(l)")

@@ -1,6 +1,6 @@
 """Names of species and the states behind them: ``aniline(l)``, ``HNO3(aq, 65 %)``, ``C(graphite)``.
 
-    state = "(" phase [ "," form ] ")" | "(" form-of-an-element ")"
+state = "(" phase [ "," form ] ")" | "(" form-of-an-element ")"
 """
 
 from __future__ import annotations

@@ -1,12 +1,12 @@
 """The tokens of a quantity such as ``-45.94(18) kJ/mol of NB at 25 degC``, each with its place.
 
-    number    = [ sign ] digits [ "." digits ] [ "e" [ sign ] digits ]
-    digits    = "(" digits ")"                              uncertainty in the last digits
-    plusminus = "±" | "+/-" | "+-"
-    coverage  = "(" "k" "=" number ")" | "(" number "%" ")"
-    unit      = factor { separator factor }                 read by routeheat.units
-    of        = "of" species                                up to "at" and a number, "±", or a coverage bracket
-    at        = "at" before a number
+number    = [ sign ] digits [ "." digits ] [ "e" [ sign ] digits ]
+digits    = "(" digits ")"                              uncertainty in the last digits
+plusminus = "±" | "+/-" | "+-"
+coverage  = "(" "k" "=" number ")" | "(" number "%" ")"
+unit      = factor { separator factor }                 read by routeheat.units
+of        = "of" species                                up to "at" and a number, "±", or a coverage bracket
+at        = "at" before a number
 """
 
 from __future__ import annotations

@@ -104,9 +104,7 @@ def read_row(entry: Entry, context: Context, where: Where) -> ReadRow | None:
     return result
 
 
-def _check_heat(
-    heat: Heat, place: Piece, reaction: Reaction, kind: str, where: Where, context: Context
-) -> None:
+def _check_heat(heat: Heat, place: Piece, reaction: Reaction, kind: str, where: Where, context: Context) -> None:
     """A sign that is unusual for the kind of row, and a ΔU that cannot become a ΔH."""
     if heat.amount is not None and heat.amount.value * _USUAL_SIGN.get(kind, 0) < 0:
         usual = "exothermic" if _USUAL_SIGN[kind] < 0 else "endothermic"
@@ -147,9 +145,7 @@ def _label(pieces: list[Piece], context: Context) -> tuple[str, Piece | None]:
     label = piece.text[1:end].strip()
     if LABEL.fullmatch(label) is None:
         hint = "like [K1], at most 40 characters"
-        context.faults.append(
-            piece.fault("a label is one word of letters, digits and . - + * _", hint, 0, end + 1)
-        )
+        context.faults.append(piece.fault("a label is one word of letters, digits and . - + * _", hint, 0, end + 1))
         return "", None
     body = piece.part(end + 1).strip()
     if body.text:

@@ -24,7 +24,8 @@ MOST_ROWS = 10_000
 
 _HEADERS = ("species", "known", "target", "route", "uncertainty", "unstated")
 _HEADER_LINE = re.compile(
-    r"(?:species|known)\s*:?|target\s*(?::?\s*\[.*|:)|target|route\s+\S.*\smakes\s+\S.*|uncertainty\s*:?\s*(?:k\s*=|[0-9]).*"
+    r"(?:species|known)\s*:?|target\s*(?::?\s*\[.*|:)|target|route\s+\S.*\smakes\s+\S.*"
+    r"|uncertainty\s*:?\s*(?:k\s*=|[0-9]).*"
     r"|unstated\s*:?\s*(?:u\b|[0-9]).*",
     re.IGNORECASE,
 )
@@ -46,7 +47,7 @@ class Section:
     """A section header with its entries."""
 
     word: str
-    """``species``, ``known``, ``target``, ``route``, ``uncertainty`` or ``unstated``; empty for lines before any header."""
+    """``species``, ``known``, ``target``, ``route``, ``uncertainty``, ``unstated``; empty before any header."""
     header: Piece
     """What stands behind the word on the header line."""
     entries: list[Entry] = field(default_factory=list)

@@ -94,9 +94,10 @@ def _reading(cell: Reading) -> list[Plain]:
         words = visible(cell.words or "not entered")
         return [words, None, words]
     value = _item(cell.value)
+    mark = ", estimated" if cell.estimated else ""
     if cell.u is None:
-        return [value, "not stated", "uncertainty not stated"]
-    return [value, _item(cell.u), "at least" if cell.at_least else "standard uncertainty"]
+        return [value, "not stated", f"uncertainty not stated{mark}"]
+    return [value, _item(cell.u), ("at least" if cell.at_least else "standard uncertainty") + mark]
 
 
 def _item(cell: str | tuple[object, ...] | int | Fraction | float | None) -> Plain:

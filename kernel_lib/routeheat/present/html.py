@@ -6,10 +6,13 @@ import base64
 import html
 from functools import cache
 from importlib.resources import files
+from typing import TYPE_CHECKING
 
 from routeheat.present.markup import Rich, as_rich
-from routeheat.present.table import Table
 from routeheat.present.text import cell_text, column_header, shared_coverage, visible
+
+if TYPE_CHECKING:
+    from routeheat.present.table import Table
 
 _TAGS = {"": ("", ""), "sub": ("<sub>", "</sub>"), "sup": ("<sup>", "</sup>"), "italic": ("<i>", "</i>")}
 

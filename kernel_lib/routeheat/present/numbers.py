@@ -9,7 +9,7 @@ from __future__ import annotations
 import math
 from fractions import Fraction
 
-from routeheat.present.table import Reading
+from routeheat.present.cells import Reading
 
 MINUS = "\N{MINUS SIGN}"
 

@@ -6,10 +6,14 @@ import re
 import textwrap
 import unicodedata
 from fractions import Fraction
+from typing import TYPE_CHECKING
 
+from routeheat.present.cells import Cell, Column, Reading
 from routeheat.present.markup import Rich, Run, as_rich, plain
 from routeheat.present.numbers import coverage, fraction, number, reading
-from routeheat.present.table import Cell, Column, Reading, Table
+
+if TYPE_CHECKING:
+    from routeheat.present.table import Table
 
 PAGE = 100
 """Characters at which titles and notes wrap."""
@@ -81,8 +85,9 @@ def cell_text(cell: Cell, column: Column, *, say_k: bool = True) -> str:
 
 def shared_coverage(table: Table, index: int) -> float | None:
     """The one coverage factor of all uncertainties in a column, or ``None`` when there is none or several."""
-    factors = {cell.k for row in table.rows if isinstance(cell := row[index], Reading) and cell.value is not None
-               and cell.u}
+    factors = {
+        cell.k for row in table.rows if isinstance(cell := row[index], Reading) and cell.value is not None and cell.u
+    }
     return factors.pop() if len(factors) == 1 else None
 
 
@@ -99,12 +104,16 @@ def render_table(table: Table) -> str:
     says_k = [shared_coverage(table, index) is None for index in range(len(table.columns))]
     header = [_wrap(visible(plain(column_header(table, i))), WIDEST_CELL) for i in range(len(table.columns))]
     body = [
-        [_wrap(cell_text(cell, column, say_k=says_k[i]), WIDEST_CELL)
-         for i, (cell, column) in enumerate(zip(row, table.columns, strict=True))]
+        [
+            _wrap(cell_text(cell, column, say_k=says_k[i]), WIDEST_CELL)
+            for i, (cell, column) in enumerate(zip(row, table.columns, strict=True))
+        ]
         for row in table.rows
     ]
-    widths = [max((display_width(line) for row in (header, *body) for line in row[index]), default=0)
-              for index in range(len(table.columns))]
+    widths = [
+        max((display_width(line) for row in (header, *body) for line in row[index]), default=0)
+        for index in range(len(table.columns))
+    ]
     rule = "  ".join("─" * width for width in widths)
     lines = _wrap(visible(plain(table.title)), PAGE) if table.title else []
     lines += [*_aligned(header, table.columns, widths), rule]

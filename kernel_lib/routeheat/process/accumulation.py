@@ -45,6 +45,7 @@ def first_order(k_per_h: float, feed_h: float) -> float:
 
 def worst_first_order(k_per_h: float, feed_h: float, fed_mass: float = 0.0) -> Instant:
     """Largest Xac Mrf/Mr of a pseudo-first-order feed; ``fed_mass`` is the feed's part of the final mass."""
+
     def at(time: float) -> Instant:
         return Instant(time, time * first_order(k_per_h, time * feed_h), _mass_ratio(time, fed_mass))
 
@@ -118,8 +119,13 @@ class Accumulation:
 
     def to_dict(self) -> dict[str, Any]:
         """JSON-safe content."""
-        return {"fraction": self.fraction.to_dict(), "mass_ratio": self.mass_ratio, "origin": self.origin,
-                "instant": self.instant, "notices": list(self.notices)}
+        return {
+            "fraction": self.fraction.to_dict(),
+            "mass_ratio": self.mass_ratio,
+            "origin": self.origin,
+            "instant": self.instant,
+            "notices": list(self.notices),
+        }
 
 
 def accumulation(step: Step, settings: Settings, limiting: Species) -> Accumulation:
@@ -129,16 +135,21 @@ def accumulation(step: Step, settings: Settings, limiting: Species) -> Accumulat
     fed_mass = settings.number("fedpart", PURE, 0.0)
     faults = [] if 0 <= fed_mass < 1 else ["fedpart is a part of the final mass: at least 0 %, below 100 %"]
     faults += [] if feed is None or feed.value > 0 else ["the feed time must be longer than zero"]
-    faults += [f"{key} is not positive" for key, unit in (("rate1", PER_HOUR), ("rate2", SECOND_ORDER))
-               if settings.number(key, unit, 1.0) <= 0]
+    faults += [
+        f"{key} is not positive"
+        for key, unit in (("rate1", PER_HOUR), ("rate2", SECOND_ORDER))
+        if settings.number(key, unit, 1.0) <= 0
+    ]
     if faults:
         return Accumulation(Value(1.0), 1.0, "assumed", faults=tuple(faults))
     if settings.flag("batch"):
         wrong = typed is not None and typed.value != 1
-        return Accumulation(Value(1.0, 0.0), 1.0, "batch",
-                            faults=("a batch has everything in the vessel: Xac is 1",) if wrong else ())
+        return Accumulation(
+            Value(1.0, 0.0), 1.0, "batch", faults=("a batch has everything in the vessel: Xac is 1",) if wrong else ()
+        )
     if typed is not None:
-        return _typed(typed, _fed_ratio(step, settings, limiting)[0], fed_mass, "rate1" in settings or "rate2" in settings)
+        rates = "rate1" in settings or "rate2" in settings
+        return _typed(typed, _fed_ratio(step, settings, limiting)[0], fed_mass, rates)
     return _from_kinetics(step, settings, limiting, feed, fed_mass)
 
 

@@ -189,9 +189,7 @@ class RouteAtScale:
         found = ((step.label, scenario(step.criticality).at_values) for step in self.steps)
         return [label for label, item in found if isinstance(item, NotAssessed) and item is not ENDOTHERMIC]
 
-    def _extreme(
-        self, quantity: Callable[[StepAtScale], Value | NotAssessed], choose: Callable[..., float]
-    ) -> Extreme:
+    def _extreme(self, quantity: Callable[[StepAtScale], Value | NotAssessed], choose: Callable[..., float]) -> Extreme:
         """Over the steps that are not endothermic."""
         known: list[tuple[Value, str]] = []
         unknown = []
@@ -277,6 +275,4 @@ def _route(found: Profile, water: Count, side_rows: Count, thresholds: Threshold
     for item in found.steps:
         step = vessel(item, thresholds=thresholds)
         steps.append(StepAtScale(item, step, criticality(step)))
-    return RouteAtScale(
-        found, tuple(steps), checklist(found.route), waste(found, water=water, side_rows=side_rows)
-    )
+    return RouteAtScale(found, tuple(steps), checklist(found.route), waste(found, water=water, side_rows=side_rows))

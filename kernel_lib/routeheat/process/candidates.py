@@ -24,8 +24,10 @@ from routeheat.process.heats import molar_heat
 if TYPE_CHECKING:
     from numpy.typing import NDArray
 
-AMBIGUOUS = ("the known rows contain cycles and are not reconciled: what is known of a formation depends on the rows "
-             "it is derived from")
+AMBIGUOUS = (
+    "the known rows contain cycles and are not reconciled: what is known of a formation depends on the rows "
+    "it is derived from"
+)
 
 
 @dataclass(frozen=True, slots=True)

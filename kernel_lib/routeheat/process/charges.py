@@ -26,9 +26,18 @@ _MOL_PER_MOL = read_unit("mol/mol")
 _LITRE_PER_KG = read_unit("L/kg")
 _KG_PER_KG = read_unit("kg/kg")
 _KG_PER_LITRE = read_unit("kg/L")
-_AMOUNT = re.compile(r"(?P<name>(?:[^()]|\([^()]*\))+?)\s+(?P<number>[0-9]{1,12}(?:\.[0-9]{1,12})?)\s*(?P<unit>[^0-9].*)?")
-_SPOKEN = {"eq": "mol/mol", "equiv": "mol/mol", "vol": "L/kg", "volumes": "L/kg", "wt %": "%", "wt%": "%",
-           "w/w": "kg/kg"}
+_AMOUNT = re.compile(
+    r"(?P<name>(?:[^()]|\([^()]*\))+?)\s+(?P<number>[0-9]{1,12}(?:\.[0-9]{1,12})?)\s*(?P<unit>[^0-9].*)?"
+)
+_SPOKEN = {
+    "eq": "mol/mol",
+    "equiv": "mol/mol",
+    "vol": "L/kg",
+    "volumes": "L/kg",
+    "wt %": "%",
+    "wt%": "%",
+    "w/w": "kg/kg",
+}
 _HINT = "like toluene 5 L/kg density 0.867 kg/L, or H2SO4 0.05 mol/mol"
 _BETWEEN = re.compile(r",\s+(?![^()]*\))")
 """The comma between two charges; one within the state of a species is part of its name."""
@@ -86,8 +95,10 @@ def charges(step: Step, settings: Settings, limiting: Species) -> Charges:
         return Charges(tuple(items.values()), True)
     drafts = [_read(part, step) for part in _BETWEEN.split(text.strip().rstrip(","))]
     size = settings.value("size", AMOUNT)
-    scale = next((_moles(draft) for draft in drafts if draft.species == limiting and draft.unit == KILOGRAM),
-                 None if size is None else Fraction(size.value))
+    scale = next(
+        (_moles(draft) for draft in drafts if draft.species == limiting and draft.unit == KILOGRAM),
+        None if size is None else Fraction(size.value),
+    )
     extras: list[Charge] = []
     percents: list[tuple[Charge, float]] = []
     for draft in drafts:
@@ -167,8 +178,9 @@ def _number(text: str, unit: str, step: Step) -> tuple[Fraction, Unit]:
             return read.convert(number, _MOL_PER_MOL), _KG_PER_KG if by_mass else _MOL_PER_MOL
     except UnitError as problem:
         raise RouteError(f"{step.label}: charges: {problem}", step=step.label, hint=_HINT) from problem
-    raise RouteError(f"{step.label}: charges: {text} {typed} is no amount", step=step.label,
-                     hint="mol/mol, L/kg, kg/kg, kg or %")
+    raise RouteError(
+        f"{step.label}: charges: {text} {typed} is no amount", step=step.label, hint="mol/mol, L/kg, kg/kg, kg or %"
+    )
 
 
 def _molar_mass(name: str) -> Fraction | None:
@@ -230,11 +242,17 @@ def _weigh(draft: _Draft, limiting: Species, scale: Fraction | None) -> list[Cha
 
 
 def _enough(step: Step, needed: Charge, found: Charge) -> None:
-    stoichiometric = None if needed.species is None or needed.mass is None else needed.mass / float(
-        dict(step.equivalents).get(needed.species, Fraction(1)))
+    stoichiometric = (
+        None
+        if needed.species is None or needed.mass is None
+        else needed.mass / float(dict(step.equivalents).get(needed.species, Fraction(1)))
+    )
     if found.mass is not None and stoichiometric is not None and found.mass < stoichiometric * (1 - _DUST):
-        raise RouteError(f"{step.label}: charges: less {found.name} than the reaction needs", step=step.label,
-                         hint="type the reactant in deficit as limiting")
+        raise RouteError(
+            f"{step.label}: charges: less {found.name} than the reaction needs",
+            step=step.label,
+            hint="type the reactant in deficit as limiting",
+        )
 
 
 def _percents(step: Step, percents: list[tuple[Charge, float]], others: list[Charge]) -> list[Charge]:

@@ -20,10 +20,21 @@ from routeheat.process.heats import molar_heat
 from routeheat.process.settings import Settings
 
 OPERATIONS: tuple[str, ...] = (
-    "quench", "work-up", "neutralisation", "dissolution", "crystallisation", "distillation", "scrubber",
+    "quench",
+    "work-up",
+    "neutralisation",
+    "dissolution",
+    "crystallisation",
+    "distillation",
+    "scrubber",
 )
-_SPELLINGS = {"workup": "work-up", "work up": "work-up", "neutralization": "neutralisation",
-              "crystallization": "crystallisation", "scrubbing": "scrubber"}
+_SPELLINGS = {
+    "workup": "work-up",
+    "work up": "work-up",
+    "neutralization": "neutralisation",
+    "crystallization": "crystallisation",
+    "scrubbing": "scrubber",
+}
 _KEYS = {"quench": "quench", "workup": "work-up", "neutralisation": "neutralisation", "scrubber": "scrubber"}
 """Flags of a row that say which operation it is, beside those of its :attr:`Step.operation`."""
 INCOMPLETE = "incomplete"
@@ -90,14 +101,22 @@ class Checklist(Shown):
         columns = (Column("operation", "Operation"), Column("state", "State"))
         notes = [self.words]
         if self.unstated:
-            notes.append(f"side rows that do not say what they are (quench, work-up, neutralisation, scrubber): "
-                         f"{', '.join(self.unstated)}")
+            notes.append(
+                f"side rows that do not say what they are (quench, work-up, neutralisation, scrubber): "
+                f"{', '.join(self.unstated)}"
+            )
         if self.not_entered:
             notes.append(f"no heat entered: {', '.join(self.not_entered)}")
-        notes.append("one row closes an operation for the whole route: check every step; side rows are no part of a "
-                     "reactor's duty")
-        return Table(f"Operations of route {self.route}", columns,
-                     tuple((item.operation, item.words) for item in self.items), tuple(notes))
+        notes.append(
+            "one row closes an operation for the whole route: check every step; side rows are no part of a "
+            "reactor's duty"
+        )
+        return Table(
+            f"Operations of route {self.route}",
+            columns,
+            tuple((item.operation, item.words) for item in self.items),
+            tuple(notes),
+        )
 
     def to_dict(self) -> dict[str, Any]:
         """JSON-safe content."""
@@ -105,8 +124,16 @@ class Checklist(Shown):
             "route": self.route,
             "complete": self.complete,
             "open": list(self.open),
-            "items": [{"operation": i.operation, "rows": list(i.rows), "included": list(i.included),
-                       "reasons": list(i.reasons), "open": i.open} for i in self.items],
+            "items": [
+                {
+                    "operation": i.operation,
+                    "rows": list(i.rows),
+                    "included": list(i.included),
+                    "reasons": list(i.reasons),
+                    "open": i.open,
+                }
+                for i in self.items
+            ],
             "unstated": list(self.unstated),
             "not_entered": list(self.not_entered),
             "words": self.words,
@@ -142,8 +169,10 @@ def checklist(route: Route) -> Checklist:
         for names, reason in nil_of(step):
             for name in names:
                 reasons[name].append(f"{reason} ({step.label})")
-    items = tuple(Item(name, tuple(dict.fromkeys(given[name])), tuple(included[name]), tuple(reasons[name]))
-                  for name in OPERATIONS)
+    items = tuple(
+        Item(name, tuple(dict.fromkeys(given[name])), tuple(included[name]), tuple(reasons[name]))
+        for name in OPERATIONS
+    )
     return Checklist(route.name, items, tuple(unstated), tuple(without))
 
 

@@ -89,10 +89,7 @@ def _from_known(difference: Reaction, known: Mapping[str, Row], k: float) -> tup
 def _all_known(first: Profile, second: Profile) -> dict[str, Row]:
     """Known rows of both routes; a label that means two different rows is left out."""
     mine, theirs = first.route.known, second.route.known
-    return {
-        label: row for label, row in {**theirs, **mine}.items()
-        if mine.get(label, row) == theirs.get(label, row)
-    }
+    return {label: row for label, row in {**theirs, **mine}.items() if mine.get(label, row) == theirs.get(label, row)}
 
 
 def _missing(profile: Profile) -> list[str]:

@@ -94,7 +94,8 @@ def compare_routes(
 ) -> Comparison:
     """Profiles of ``routes`` on one basis, their differences, and whether their data agree.
 
-    ``per`` and ``known`` as in :func:`~routeheat.process.profile.profile`. Raises :class:`~routeheat.errors.RouteError` when there is no route, two have one name, they do not all make the
+    ``per`` and ``known`` as in :func:`~routeheat.process.profile.profile`. Raises
+    :class:`~routeheat.errors.RouteError` when there is no route, two have one name, they do not all make the
     same species, or one of them cannot be run as typed.
     """
     listed = list(routes.values()) if isinstance(routes, Mapping) else list(routes)
@@ -107,7 +108,8 @@ def compare_routes(
     for route in listed:
         if route.makes != listed[0].makes:
             raise RouteError(
-                f"route {names[0]} makes {listed[0].makes}, route {route.name} makes {route.makes}", route.name,
+                f"route {names[0]} makes {listed[0].makes}, route {route.name} makes {route.makes}",
+                route.name,
                 hint="only routes to the same species in the same phase can be compared",
             )
     profiles = tuple(profile(route, per=per, known=known) for route in listed)
@@ -125,8 +127,9 @@ def _difference(first: Profile, second: Profile) -> Difference:
     if missing:
         return Difference(*names, None, f"cannot be judged: not entered in {'; '.join(missing)}")
     heat = second.total - first.total
-    notes = dict.fromkeys(f"{item.route.name}: {note}" for item in (first, second) for note in item.yield_notes
-                          if "not included" in note)
+    notes = dict.fromkeys(
+        f"{item.route.name}: {note}" for item in (first, second) for note in item.yield_notes if "not included" in note
+    )
     return Difference(*names, heat, _verdict(first, second, heat), tuple(notes))
 
 
@@ -140,7 +143,8 @@ def _verdict(first: Profile, second: Profile, heat: HeatSum) -> str:
     if not significant(heat):
         return "not distinguishable"
     lower, upper = (second, first) if heat.exact < 0 else (first, second)
-    size = f"{reading(Reading(abs(float(heat.exact)), heat.u, heat.k))} {first.unit}"
+    apart = Reading(abs(float(heat.exact)), heat.u, heat.k, estimated=bool(heat.estimated))
+    size = f"{reading(apart)} {first.unit}"
     if any("yield uncertainty" in note for item in (first, second) for note in item.yield_notes):
         size += " (yield uncertainty not included)"
     if lower.total.exact > 0:

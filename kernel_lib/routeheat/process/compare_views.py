@@ -87,10 +87,14 @@ def closure_table(comparison: Comparison) -> Table:
         Column("verdict", "what can be said"),
     )
     rows = tuple(_closure_row(item) for item in comparison.closures)
-    notes = ["theoretical extents per mole of product: yields of 1, no excess, no recycle, no side rows; these heats "
-             "share no axis with the cumulative heats", _RULE]
-    notes += dict.fromkeys(f"{item.second} − {item.first}: {note}" for item in comparison.closures
-                           for note in item.notes)
+    notes = [
+        "theoretical extents per mole of product: yields of 1, no excess, no recycle, no side rows; these heats "
+        "share no axis with the cumulative heats",
+        _RULE,
+    ]
+    notes += dict.fromkeys(
+        f"{item.second} − {item.first}: {note}" for item in comparison.closures for note in item.notes
+    )
     title = join(["Routes to ", comparison.profiles[0].route.makes.rich, ": do the data agree?"])
     return Table(title, columns, rows, tuple(notes))
 
@@ -110,8 +114,9 @@ def ladder(comparison: Comparison, *, overlay: bool = False) -> Ladder:
     notes = figure_notes(comparison.profiles)
     words = [in_words(item) for item in comparison.profiles]
     words += [f"{item.second} minus {item.first}: {item.verdict}." for item in comparison.differences]
-    return Ladder(_title(comparison), columns, CUMULATIVE, first.basis.shown_unit, first.k, overlay, notes,
-                  " ".join(words))
+    return Ladder(
+        _title(comparison), columns, CUMULATIVE, first.basis.shown_unit, first.k, overlay, notes, " ".join(words)
+    )
 
 
 def to_dict(comparison: Comparison) -> dict[str, Any]:
@@ -121,14 +126,25 @@ def to_dict(comparison: Comparison) -> dict[str, Any]:
         "unit": comparison.unit,
         "profiles": [profile_dict(item) for item in comparison.profiles],
         "differences": [
-            {"first": item.first, "second": item.second, "heat": heat_dict(item.heat), "verdict": item.verdict,
-             "notes": list(item.notes)}
+            {
+                "first": item.first,
+                "second": item.second,
+                "heat": heat_dict(item.heat),
+                "verdict": item.verdict,
+                "notes": list(item.notes),
+            }
             for item in comparison.differences
         ],
         "closures": [
-            {"first": item.first, "second": item.second,
-             "difference": None if item.difference is None else item.difference.text, "rows": list(item.rows),
-             "discrepancy": heat_dict(item.discrepancy), "verdict": item.verdict, "notes": list(item.notes)}
+            {
+                "first": item.first,
+                "second": item.second,
+                "difference": None if item.difference is None else item.difference.text,
+                "rows": list(item.rows),
+                "discrepancy": heat_dict(item.discrepancy),
+                "verdict": item.verdict,
+                "notes": list(item.notes),
+            }
             for item in comparison.closures
         ],
     }

@@ -95,8 +95,7 @@ class Scenario:
             "temperature": self.temperature,
             "class_at_values": None if isinstance(self.at_values, NotAssessed) else list(self.at_values),
             "reachable": [{"classes": list(r.classes), "probability": r.probability} for r in self.reachable],
-            "probabilities": None if self.probabilities is None else
-            {str(c): p for c, p in self.probabilities.items()},
+            "probabilities": None if self.probabilities is None else {str(c): p for c, p in self.probabilities.items()},
             "words": self.words,
             "refused": refused,
         }
@@ -166,8 +165,16 @@ def criticality(
     notices = [AMBIENT] if limit is not None and limit <= ambient else []
     hours, exact = _tmrad(found, as_run.temperature)
     return Criticality(
-        found, ambient, as_run, misfeed, stop, _severity(found), _probability(found, as_run.temperature, hours),
-        hours, exact, tuple(notices),
+        found,
+        ambient,
+        as_run,
+        misfeed,
+        stop,
+        _severity(found),
+        _probability(found, as_run.temperature, hours),
+        hours,
+        exact,
+        tuple(notices),
     )
 
 
@@ -242,9 +249,7 @@ def _tmrad(found: VesselStep, temperature: float | None) -> tuple[float | None, 
     return None, None
 
 
-def _probability(
-    found: VesselStep, temperature: float | None, hours: float | None
-) -> tuple[Level, ...] | NotAssessed:
+def _probability(found: VesselStep, temperature: float | None, hours: float | None) -> tuple[Level, ...] | NotAssessed:
     what = "probability not assessed"
     if found.exothermic is False:
         return NotAssessed(what, reason="endothermic")
@@ -256,4 +261,3 @@ def _probability(
         return NotAssessed(what, ("E",))
     longer = temperature < found.td24.celsius.value
     return (Level("probability, 3 levels", PROBABILITY_3[0] if longer else f"at least {PROBABILITY_3[1]}"),)
-

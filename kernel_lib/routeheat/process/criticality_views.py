@@ -37,12 +37,16 @@ def marks(found: Criticality) -> tuple[Mark, ...]:
     if isinstance(step.process, Value):
         dots.append(Mark("Tp", step.process.value, step.process.u, "process temperature", "process"))
     if step.exothermic is not False:
-        for label, item, words in (("MTSR", step.mtsr, "maximum temperature of the synthesis reaction"),
-                                   ("MTSR, all at once", step.misfeed_mtsr, "everything charged at once")):
+        for label, item, words in (
+            ("MTSR", step.mtsr, "maximum temperature of the synthesis reaction"),
+            ("MTSR, all at once", step.misfeed_mtsr, "everything charged at once"),
+        ):
             if isinstance(item, Value):
                 dots.append(Mark(label, item.value, item.u, words, "scenario"))
-    for label, limit, words in (("MTT", step.mtt, "boiling point or pressure limit"),
-                                ("TD24", step.td24, "decomposition within 24 h, adiabatic")):
+    for label, limit, words in (
+        ("MTT", step.mtt, "boiling point or pressure limit"),
+        ("TD24", step.td24, "decomposition within 24 h, adiabatic"),
+    ):
         if isinstance(limit, Limit):
             dots.append(Mark(label, limit.celsius.value, limit.celsius.u, words))
     return tuple(sorted(dots, key=lambda dot: dot.value))
@@ -51,9 +55,11 @@ def marks(found: Criticality) -> tuple[Mark, ...]:
 def table(found: Criticality) -> Table:
     """Both scenarios with their temperatures and classes."""
     columns = (
-        Column("scenario", "Cooling fails"), Column("mtsr", "MTSR / °C", align="right"),
+        Column("scenario", "Cooling fails"),
+        Column("mtsr", "MTSR / °C", align="right"),
         Column("temperature", "Scenario temperature", "°C", "right", 1),
-        Column("at_values", "At the values"), Column("class", "Criticality class"),
+        Column("at_values", "At the values"),
+        Column("class", "Criticality class"),
     )
     rows = tuple(_row(item, found) for item in (found.as_run, found.misfeed))
     return Table(f"Criticality of {found.label}", columns, rows, notes(found))
@@ -62,8 +68,13 @@ def table(found: Criticality) -> Table:
 def _row(item: Scenario, found: Criticality) -> tuple[Cell, ...]:
     endothermic = found.step.exothermic is False
     at_values = "none" if isinstance(item.at_values, NotAssessed) else " or ".join(map(str, item.at_values[::-1]))
-    return (item.name, "" if endothermic else shown(item.mtsr, found.step.k),
-            None if endothermic else item.temperature, at_values, item.words)
+    return (
+        item.name,
+        "" if endothermic else shown(item.mtsr, found.step.k),
+        None if endothermic else item.temperature,
+        at_values,
+        item.words,
+    )
 
 
 def notes(found: Criticality) -> tuple[str, ...]:
@@ -75,8 +86,12 @@ def notes(found: Criticality) -> tuple[str, ...]:
     listed += _uncertainty(found)
     own = (THRESHOLDS, SHORT)
     listed += [note for note in vessel_notes(found.step) if note not in own and not note.startswith("±")]
-    return (*listed, "class by the ordering of MTSR, MTT and TD24, ties to the worse class; " + THRESHOLDS,
-            f"± is {coverage(found.step.k)}", SHORT)
+    return (
+        *listed,
+        "class by the ordering of MTSR, MTT and TD24, ties to the worse class; " + THRESHOLDS,
+        f"± is {coverage(found.step.k)}",
+        SHORT,
+    )
 
 
 def _temperatures(found: Criticality) -> list[str]:
@@ -103,13 +118,16 @@ def _uncertainty(found: Criticality) -> list[str]:
     if isinstance(run.at_values, NotAssessed):
         return []
     named = [("MTSR", step.mtsr)]
-    named += [(name, item.celsius) for name, item in (("MTT", step.mtt), ("TD24", step.td24))
-              if isinstance(item, Limit)]
+    named += [
+        (name, item.celsius) for name, item in (("MTT", step.mtt), ("TD24", step.td24)) if isinstance(item, Limit)
+    ]
     open_ = [name for name, item in named if isinstance(item, Value) and not item.complete]
     listed = []
     if len(run.reachable) > 1 or run.probabilities is not None:
-        listed.append("probabilities: independent normal distributions of MTSR, MTT and TD24; listed from "
-                      f"{number(100 * step.thresholds.reachable, 0)} %")
+        listed.append(
+            "probabilities: independent normal distributions of MTSR, MTT and TD24; listed from "
+            f"{number(100 * step.thresholds.reachable, 0)} %"
+        )
     if open_:
         listed.append(f"uncertainty of {', '.join(open_)} not (fully) stated: other classes may be reachable")
     return listed
@@ -128,8 +146,9 @@ def to_dict(found: Criticality) -> dict[str, Any]:
         "probability": _levels_dict(found.probability),
         "tmrad_h": found.tmrad_h,
         "tmrad_integral_h": found.tmrad_integral_h,
-        "marks": [{"label": m.label, "value": m.value, "u": m.u, "words": m.words, "kind": m.kind}
-                  for m in marks(found)],
+        "marks": [
+            {"label": m.label, "value": m.value, "u": m.u, "words": m.words, "kind": m.kind} for m in marks(found)
+        ],
         "notes": list(notes(found)),
     }
 

@@ -16,13 +16,26 @@ from routeheat.units import CALORIE
 
 HALOGENS = ("F", "Cl", "Br", "I")
 METAL_OXYGEN: Mapping[str, tuple[Fraction, str]] = {
-    "Li": (Fraction(1, 2), "Li2O"), "Na": (Fraction(1, 2), "Na2O"), "K": (Fraction(1, 2), "K2O"),
-    "Cs": (Fraction(1, 2), "Cs2O"), "Ag": (Fraction(0), "Ag"), "Mg": (Fraction(1), "MgO"), "Ca": (Fraction(1), "CaO"),
-    "Sr": (Fraction(1), "SrO"), "Ba": (Fraction(1), "BaO"), "Zn": (Fraction(1), "ZnO"), "Cu": (Fraction(1), "CuO"),
-    "Pb": (Fraction(1), "PbO"), "Sn": (Fraction(2), "SnO2"), "Ti": (Fraction(2), "TiO2"),
-    "Al": (Fraction(3, 2), "Al2O3"), "Fe": (Fraction(3, 2), "Fe2O3"),
-    "Cr": (Fraction(3, 2), "Cr2O3"), "B": (Fraction(3, 2), "B2O3"),
-    "Si": (Fraction(2), "SiO2"), "P": (Fraction(5, 2), "P2O5"),
+    "Li": (Fraction(1, 2), "Li2O"),
+    "Na": (Fraction(1, 2), "Na2O"),
+    "K": (Fraction(1, 2), "K2O"),
+    "Cs": (Fraction(1, 2), "Cs2O"),
+    "Ag": (Fraction(0), "Ag"),
+    "Mg": (Fraction(1), "MgO"),
+    "Ca": (Fraction(1), "CaO"),
+    "Sr": (Fraction(1), "SrO"),
+    "Ba": (Fraction(1), "BaO"),
+    "Zn": (Fraction(1), "ZnO"),
+    "Cu": (Fraction(1), "CuO"),
+    "Pb": (Fraction(1), "PbO"),
+    "Sn": (Fraction(2), "SnO2"),
+    "Ti": (Fraction(2), "TiO2"),
+    "Al": (Fraction(3, 2), "Al2O3"),
+    "Fe": (Fraction(3, 2), "Fe2O3"),
+    "Cr": (Fraction(3, 2), "Cr2O3"),
+    "B": (Fraction(3, 2), "B2O3"),
+    "Si": (Fraction(2), "SiO2"),
+    "P": (Fraction(5, 2), "P2O5"),
 }
 """Oxygen atoms that one atom takes into the oxide stated; a convention."""
 HIGH_BAND = (-120.0, 80.0)
@@ -75,8 +88,11 @@ def oxygen_balance(formula: Formula) -> Balance | str:
     halogen = sum((count.get(x, Fraction(0)) for x in HALOGENS), Fraction(0))
     hydrogen = count.get("H", Fraction(0))
     need = 2 * count.get("C", Fraction(0)) + max(hydrogen - halogen, Fraction(0)) / 2 + 2 * count.get("S", Fraction(0))
-    products = [f"{symbol} as {product}" for symbol, product in
-                (("C", "CO2"), ("H", "H2O"), ("N", "N2"), ("S", "SO2")) if symbol in count]
+    products = [
+        f"{symbol} as {product}"
+        for symbol, product in (("C", "CO2"), ("H", "H2O"), ("N", "N2"), ("S", "SO2"))
+        if symbol in count
+    ]
     products += [f"{x} as H{x}" for x in HALOGENS if x in count]
     if halogen > hydrogen:
         products.append("excess halogen as X2")
@@ -161,9 +177,7 @@ def joule_to_calorie(released_j_per_g: float) -> float:
     return released_j_per_g / float(CALORIE)
 
 
-def yoshida(
-    released_j_per_g: float, onset_c: float, *, cautious: bool = False
-) -> tuple[float, float]:
+def yoshida(released_j_per_g: float, onset_c: float, *, cautious: bool = False) -> tuple[float, float]:
     """(EP, SS): explosion propagation and shock sensitivity, log Q − a log(T − 25) − b; 0 or more reads positive.
 
     Takes J/g and converts: the correlation is in cal/g, and with J/g instead both figures are 0.62 too high. Raises

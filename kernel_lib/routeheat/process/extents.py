@@ -14,12 +14,12 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 from fractions import Fraction
 
+from routeheat.chem.exact import Span
 from routeheat.chem.heat import Datum
 from routeheat.chem.reaction import Reaction, add_net
 from routeheat.chem.route import Route
 from routeheat.chem.step import Recycle, Step
 from routeheat.errors import RouteError
-from routeheat.chem.exact import Span
 from routeheat.process.linking import read_links
 from routeheat.process.links import Links, charge, share, side_amount
 from routeheat.units import PURE
@@ -211,9 +211,13 @@ def _endless(links: Links) -> RouteError:
 def _faults_of_solution(links: Links, found: Extents) -> list[RouteError]:
     route = links.route
     faults = [
-        RouteError(f"{step.label}: the recycle returns everything that is needed, so the step would run "
-                   f"{found[step.label]} times per mole of {route.makes}", route.name, step.label,
-                   "lower the recycled part")
+        RouteError(
+            f"{step.label}: the recycle returns everything that is needed, so the step would run "
+            f"{found[step.label]} times per mole of {route.makes}",
+            route.name,
+            step.label,
+            "lower the recycled part",
+        )
         for step in links.main
         if found[step.label] <= 0
     ]
@@ -223,8 +227,14 @@ def _faults_of_solution(links: Links, found: Extents) -> list[RouteError]:
         for species in dict.fromkeys(item.species for item in step.recycles):
             returned = sum((recycled(found, item) for item in step.recycles if item.species == species), Fraction(0))
             if returned > charge(step, species) * found[step.label]:
-                faults.append(RouteError(f"{step.label}: the recycle returns more {species} than the step uses",
-                                         route.name, step.label, "lower the recycled part"))
+                faults.append(
+                    RouteError(
+                        f"{step.label}: the recycle returns more {species} than the step uses",
+                        route.name,
+                        step.label,
+                        "lower the recycled part",
+                    )
+                )
     return faults
 
 

@@ -196,19 +196,19 @@ class FeedCheck:
             return f"within the capacity, above the margin of {self.margin:g}: {tail}"
         return NOTHING_EXCEEDED
 
-    def curve(self, points: int = 50) -> tuple[tuple[float, float], ...]:
-        """Pairs (feed time in h, load as a part of 1) from a quarter to four times the typed feed time."""
-        last = max(points - 1, 1)
-        hours = [self.feed_h * 0.25 * 16 ** (index / last) for index in range(points)]
-        return tuple((time, self.vessel.load(time)) for time in hours)
-
     def to_dict(self) -> dict[str, Any]:
         """JSON-safe content."""
         return {
-            "feed_h": self.feed_h, "margin": self.margin, "heat_rate_kw": self.heat_rate_kw,
-            "specific_w_per_kg": self.specific_heat_rate, "sensible_kw": self.sensible_kw,
-            "stirring_kw": self.vessel.stirring_kw, "capacity_kw": self.vessel.capacity_kw, "load": self.load,
-            "shortest_h": self.shortest_h, "shortest_with_margin_h": self.shortest_with_margin_h,
+            "feed_h": self.feed_h,
+            "margin": self.margin,
+            "heat_rate_kw": self.heat_rate_kw,
+            "specific_w_per_kg": self.specific_heat_rate,
+            "sensible_kw": self.sensible_kw,
+            "stirring_kw": self.vessel.stirring_kw,
+            "capacity_kw": self.vessel.capacity_kw,
+            "load": self.load,
+            "shortest_h": self.shortest_h,
+            "shortest_with_margin_h": self.shortest_with_margin_h,
             "verdict": self.verdict,
         }
 
@@ -270,9 +270,16 @@ class Gas:
 
     def to_dict(self) -> dict[str, Any]:
         """JSON-safe content."""
-        return {"per_mol": self.per_mol, "origin": self.origin, "celsius": self.celsius,
-                "pressure_pa": self.pressure_pa, "mol_per_h": self.per_hour, "m3_per_mol": self.volume_per_mol,
-                "m3_per_h": self.volume_rate, "notes": list(self.notes)}
+        return {
+            "per_mol": self.per_mol,
+            "origin": self.origin,
+            "celsius": self.celsius,
+            "pressure_pa": self.pressure_pa,
+            "mol_per_h": self.per_hour,
+            "m3_per_mol": self.volume_per_mol,
+            "m3_per_h": self.volume_rate,
+            "notes": list(self.notes),
+        }
 
 
 @dataclass(frozen=True, slots=True)
@@ -288,4 +295,3 @@ class Boiling:
     def to_dict(self) -> dict[str, Any]:
         """JSON-safe content."""
         return {"evaporated_kg": self.evaporated_kg, "per_kg": self.per_kg, "vapour_kg_per_h": self.vapour_kg_per_h}
-

@@ -48,19 +48,21 @@ class Group:
 def groups() -> Mapping[str, Group]:
     """Every group of the table by its name."""
     text = files("routeheat.process").joinpath("decomposition_groups.csv").read_text(encoding="utf-8")
-    return MappingProxyType({
-        row["group"]: Group(
-            row["group"],
-            tuple(word for word in row["spellings"].split(";") if word),
-            float(row["released_low"]),
-            float(row["released_high"]),
-            float(row["released_mean"]) if row["released_mean"] else None,
-            row["list"],
-            row["smarts"],
-            row["source"],
-        )
-        for row in csv.DictReader(text.splitlines())
-    })
+    return MappingProxyType(
+        {
+            row["group"]: Group(
+                row["group"],
+                tuple(word for word in row["spellings"].split(";") if word),
+                float(row["released_low"]),
+                float(row["released_high"]),
+                float(row["released_mean"]) if row["released_mean"] else None,
+                row["list"],
+                row["smarts"],
+                row["source"],
+            )
+            for row in csv.DictReader(text.splitlines())
+        }
+    )
 
 
 @cache

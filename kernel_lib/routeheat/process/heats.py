@@ -14,7 +14,7 @@ from routeheat.chem.step import Step
 from routeheat.errors import OutOfReach, RouteError
 from routeheat.hess.combination import alternatives, combine
 from routeheat.present.table import Reading
-from routeheat.process.extents import Extents, yield_datum
+from routeheat.process.extents import Extents
 from routeheat.process.links import charge
 from routeheat.units import KELVIN, KJ_PER_KG_K, MOL_PER_KG
 
@@ -92,10 +92,12 @@ def heat_on_basis(found: Extents, step: Step, molar: HeatSum, moles: Fraction, l
     delivers = step.yield_value if unreacted else Fraction(1)
     terms = []
     for datum, changes in found.sensitivities:
+        if datum.u is None:
+            continue
         change = changes[step.label] * delivers
-        if unreacted and step.yield_ is not None and datum == yield_datum(step):
+        if unreacted and datum.what == "yield" and datum.label == step.label:
             change += found[step.label]
-        if datum.u is not None and change * molar.exact:
+        if change and molar.exact:
             terms.append((datum, change * molar.exact * moles))
     parts = ((found[step.label] * delivers * moles, molar), (Fraction(1), HeatSum(Fraction(0), tuple(terms))))
     return HeatSum.total(parts, molar.k)

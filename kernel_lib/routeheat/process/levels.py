@@ -63,9 +63,7 @@ class Level:
         return self.text
 
 
-def severity(
-    rise_k: float, *, gas: bool = False, levels: int = 3, thresholds: Thresholds = DEFAULTS
-) -> Level:
+def severity(rise_k: float, *, gas: bool = False, levels: int = 3, thresholds: Thresholds = DEFAULTS) -> Level:
     """Severity of losing control from the adiabatic rise in K, on 3 or 4 levels.
 
     With ``gas`` (or pressure) the lowest level is not available: the word is then ``at least medium``.
@@ -86,4 +84,3 @@ def probability(tmrad_h: float, *, levels: int = 3, thresholds: Thresholds = DEF
     limits: tuple[float, ...] = thresholds.probability_3 if levels == 3 else thresholds.probability_6
     words = PROBABILITY_3 if levels == 3 else PROBABILITY_6
     return Level(f"probability, {levels} levels", words[sum(tmrad_h <= limit for limit in limits)])
-

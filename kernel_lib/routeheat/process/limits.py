@@ -29,8 +29,12 @@ class Limit:
 
     def to_dict(self) -> dict[str, Any]:
         """JSON-safe content."""
-        return {"celsius": self.celsius.to_dict(), "origin": self.origin, "provisional": self.provisional,
-                "notes": list(self.notes)}
+        return {
+            "celsius": self.celsius.to_dict(),
+            "origin": self.origin,
+            "provisional": self.provisional,
+            "notes": list(self.notes),
+        }
 
 
 @dataclass(frozen=True, slots=True)
@@ -115,8 +119,10 @@ def td24(settings: Settings, heat_capacity: Value | None) -> Limit | NotAssessed
     if found.value != found.value:
         return NotAssessed("no TD24", ("TD24",), "no temperature gives 24 h with these numbers")
     exact = solve(*(item.value for item in inputs), integral=True)
-    notes = (f"with the integral instead of the zero-order formula TD24 is {exact:.1f} °C",
-             "zero order: not conservative for autocatalytic decompositions or after thermal history")
+    notes = (
+        f"with the integral instead of the zero-order formula TD24 is {exact:.1f} °C",
+        "zero order: not conservative for autocatalytic decompositions or after thermal history",
+    )
     return Limit(found, rate.origin, "onset" in rate.origin, notes)
 
 

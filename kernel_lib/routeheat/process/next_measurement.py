@@ -155,8 +155,15 @@ def next_measurement(
     to = {label: (attainable_for or {}).get(label, attainable) for label in labels}
     if any(not value >= 0 for value in to.values()):
         raise RouteheatError("an attainable uncertainty is a number of kJ/mol, not negative")
-    question = _Question(float(heat.exact), float(heat.variance), dict(heat.terms), heat.not_stated, found.error(heat),
-                         decides and significant(heat), decides)
+    question = _Question(
+        float(heat.exact),
+        float(heat.variance),
+        dict(heat.terms),
+        heat.not_stated,
+        found.error(heat),
+        decides and significant(heat),
+        decides,
+    )
     effects = [question.effect(candidate, to[candidate.label]) for candidate in found.listed]
     if isinstance(target, Combination):
         effects.append(question.direct(target, attainable))
@@ -216,8 +223,15 @@ class _Question:
         remark = "exact already" if not variance else "" if gain else "known as well as that already"
         if explained <= _NOTHING * before:
             explained, remark = 0.0, "does not change it"
-        return self._made(candidate, math.sqrt(variance), attainable, before - explained * gain, before - explained,
-                          self.not_stated, remark)
+        return self._made(
+            candidate,
+            math.sqrt(variance),
+            attainable,
+            before - explained * gain,
+            before - explained,
+            self.not_stated,
+            remark,
+        )
 
     def direct(self, target: Combination, attainable: float) -> Effect:
         """What measuring the target reaction itself would do."""

@@ -11,10 +11,13 @@ from routeheat.present.table import Cell, Column, Reading, Table
 if TYPE_CHECKING:
     from routeheat.process.next_measurement import Effect, NextMeasurement
 
-_MEANING = ("attainable: the standard uncertainty to which the heat is known once it is measured, whatever was known "
-            "before, per mole of reaction as written")
-_CHANCE = ("chance: probability, as seen now, that the difference is at least twice its uncertainty after the "
-           "measurement")
+_MEANING = (
+    "attainable: the standard uncertainty to which the heat is known once it is measured, whatever was known "
+    "before, per mole of reaction as written"
+)
+_CHANCE = (
+    "chance: probability, as seen now, that the difference is at least twice its uncertainty after the measurement"
+)
 
 
 def three_digits(value: float) -> str:
@@ -40,8 +43,10 @@ def sentence(item: NextMeasurement) -> str:
     now = three_digits(item.heat.u)
     if best is None:
         return f"No single measurement listed would shrink the {item.short} from u = {now}{unit}."
-    return (f"Measuring {best.label} to u = {best.attainable:g} kJ/mol would shrink the {item.short} from u = {now} to "
-            f"{three_digits(best.u_after)}{unit}; no single measurement brings it below {three_digits(item.least)}.")
+    return (
+        f"Measuring {best.label} to u = {best.attainable:g} kJ/mol would shrink the {item.short} from u = {now} to "
+        f"{three_digits(best.u_after)}{unit}; no single measurement brings it below {three_digits(item.least)}."
+    )
 
 
 def table(item: NextMeasurement) -> Table:
@@ -57,8 +62,12 @@ def table(item: NextMeasurement) -> Table:
     ]
     if item.decides:
         columns.insert(6, Column("chance", "chance of a clear difference", "%", "right", 0))
-    return Table(f"What to measure next for the {item.name}", tuple(columns),
-                 tuple(_line(item, effect) for effect in item.effects), notes(item))
+    return Table(
+        f"What to measure next for the {item.name}",
+        tuple(columns),
+        tuple(_line(item, effect) for effect in item.effects),
+        notes(item),
+    )
 
 
 def _line(item: NextMeasurement, effect: Effect) -> tuple[Cell, ...]:
@@ -84,8 +93,10 @@ def notes(item: NextMeasurement) -> tuple[str, ...]:
     if item.heat.not_stated:
         found.append(f"uncertainties are lower bounds: {', '.join(item.heat.not_stated)} not stated")
     if item.unlinked:
-        found.append(f"no known row is linked to the formation of {', '.join(item.unlinked)}: measuring one of them "
-                     "alone changes nothing")
+        found.append(
+            f"no known row is linked to the formation of {', '.join(item.unlinked)}: measuring one of them "
+            "alone changes nothing"
+        )
     return (*found, *item.notes)
 
 
@@ -94,8 +105,15 @@ def contribution_table(item: NextMeasurement) -> Table:
     lines: list[tuple[Cell, ...]] = []
     for part in item.contributions:
         u: Cell = "not stated" if part.u is None else part.u
-        lines.append((part.datum.name, part.coefficient if part.coefficient.denominator <= 12 else
-                      float(part.coefficient), u, None if part.share is None else 100 * part.share, part.datum.source))
+        lines.append(
+            (
+                part.datum.name,
+                part.coefficient if part.coefficient.denominator <= 12 else float(part.coefficient),
+                u,
+                None if part.share is None else 100 * part.share,
+                part.datum.source,
+            )
+        )
     heat = item.heat
     total = Reading(float(heat.exact), heat.u if heat.complete or heat.variance else None, item.k, not heat.complete)
     columns = (
@@ -120,9 +138,17 @@ def to_dict(item: NextMeasurement) -> dict[str, Any]:
         "sentence": sentence(item),
         "least": item.least,
         "effects": [
-            {"label": effect.label, "equation": effect.equation, "u_now": effect.u_now,
-             "attainable": effect.attainable, "u_after": effect.u_after, "u_least": effect.u_least,
-             "chance": effect.chance, "unstated": list(effect.unstated), "remark": effect.remark}
+            {
+                "label": effect.label,
+                "equation": effect.equation,
+                "u_now": effect.u_now,
+                "attainable": effect.attainable,
+                "u_after": effect.u_after,
+                "u_least": effect.u_least,
+                "chance": effect.chance,
+                "unstated": list(effect.unstated),
+                "remark": effect.remark,
+            }
             for effect in item.effects
         ],
         "contributions": [

@@ -11,6 +11,7 @@ from routeheat.hess.contained import Counted, double_counts
 from routeheat.hess.warming import at_one_temperature
 from routeheat.present.numbers import coverage, number
 from routeheat.process.cautions import SHORT
+from routeheat.process.heats import Loss
 from routeheat.units import ZERO_CELSIUS
 
 if TYPE_CHECKING:
@@ -120,7 +121,8 @@ def _rows(profile: Profile) -> list[Row]:
         if item.step.row.heat is not None:
             found[item.label] = item.step.row
         elif item.molar is not None:
-            found |= {name: profile.route.known[name] for name in item.molar.coefficients if name in profile.route.known}
+            known = profile.route.known
+            found |= {name: known[name] for name in item.molar.coefficients if name in known}
     return list(found.values())
 
 
@@ -166,7 +168,10 @@ def _losses(profile: Profile) -> list[str]:
     else:
         found = [f"loss counted as {kind} ({_MEANING[kind]}) in {', '.join(labels)}" for kind, labels in kinds.items()]
     word = "total" if profile.complete else "sum of entered steps"
-    for loss in ("reacted", "unreacted"):
+    losses: tuple[Loss, ...] = ("reacted", "unreacted")
+    for loss in losses:
+        if kinds.keys() == {loss}:
+            continue
         other = profile.total_if(loss)
         if (other.exact, other.unknowns) != (profile.total.exact, profile.total.unknowns):
             found.append(f"with the loss of every step counted as {loss}, the {word} is {other.text} {profile.unit}")
@@ -181,8 +186,11 @@ def _sides(profile: Profile) -> list[str]:
     if typed := [item.label for item in sides if item.step.yield_ is not None]:
         found.append(f"a side row runs as often as its amount says; its yield is not used: {', '.join(typed)}")
     for item in sides:
-        drawn = [s.text for s, nu in item.step.row.reaction.net.items() if nu < 0 and s in profile.bought
-                 and s in profile.found.links.maker]
+        drawn = [
+            s.text
+            for s, nu in item.step.row.reaction.net.items()
+            if nu < 0 and s in profile.bought and s in profile.found.links.maker
+        ]
         if drawn:
             found.append(f"side rows never draw on a step: {', '.join(drawn)} in {item.label} counts as bought")
     return found

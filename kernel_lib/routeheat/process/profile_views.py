@@ -56,8 +56,13 @@ def table(profile: Profile) -> Table:
     if sides:
         strong.append(len(rows))
         entered = all(item.heat is not None for item in main)
-        rows.append(_sum_row("steps without side rows" if entered else "entered steps without side rows",
-                             profile.total - profile.side_total, rises))
+        rows.append(
+            _sum_row(
+                "steps without side rows" if entered else "entered steps without side rows",
+                profile.total - profile.side_total,
+                rises,
+            )
+        )
         rows += [_row(item, rises) for item in sides]
     strong.append(len(rows))
     rows.append(_sum_row(word, profile.total, rises))
@@ -102,8 +107,9 @@ def ladder(profile: Profile) -> Ladder:
     """Cumulative levels in working order; caption = the step's own heat, whisker = the cumulative uncertainty."""
     notes = figure_notes([profile])
     column = ladder_column(profile)
-    return Ladder(title(profile), (column,), CUMULATIVE, profile.basis.shown_unit, profile.k, notes=notes,
-                  alt=in_words(profile))
+    return Ladder(
+        title(profile), (column,), CUMULATIVE, profile.basis.shown_unit, profile.k, notes=notes, alt=in_words(profile)
+    )
 
 
 def ladder_column(profile: Profile) -> LadderColumn:
@@ -161,9 +167,7 @@ def in_words(profile: Profile) -> str:
     return f"{title(profile)}: {'; '.join(parts)}; {word} {sum_text(profile.total, profile.unit)}."
 
 
-def step_ladder(
-    item: Route | Step, *, known: Mapping[str, Row] | None = None, k: float | None = None
-) -> Ladder:
+def step_ladder(item: Route | Step, *, known: Mapping[str, Row] | None = None, k: float | None = None) -> Ladder:
     """Each step by itself: reactants at level 0, products at ΔrH, in kJ per mole of reaction as written.
 
     A step without a heat of its own is derived from ``known`` (for a route: the rows of its sheet). ``k`` defaults to
@@ -221,6 +225,7 @@ def heat_dict(heat: HeatSum | None) -> dict[str, Any] | None:
         "k": heat.k,
         "complete": heat.complete,
         "not_stated": list(heat.not_stated),
+        "estimated": list(heat.estimated),
         "text": heat.text,
     }
 

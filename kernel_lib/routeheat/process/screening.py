@@ -64,13 +64,20 @@ class Screening(Shown):
 
     def table(self) -> Table:
         """Every check with its figure, its finding and what it is not proof of."""
-        columns = (Column("check", "Check"), Column("value", "Value"), Column("finding", "Finding"),
-                   Column("not_proof", "Not proof of"))
+        columns = (
+            Column("check", "Check"),
+            Column("value", "Value"),
+            Column("finding", "Finding"),
+            Column("not_proof", "Not proof of"),
+        )
         rows = tuple((c.name, c.value, c.finding, c.not_proof) for c in self.checks)
         sources = tuple(dict.fromkeys(f"{g.name}: {g.source}" for g in self.groups or ()))
-        return Table(f"Energetic screening of {self.species}", columns, rows,
-                     (f"groups: {self.group_words}", *sources, f"bands, limits and coefficients: {FROM_MEMORY}",
-                      SCREENING))
+        return Table(
+            f"Energetic screening of {self.species}",
+            columns,
+            rows,
+            (f"groups: {self.group_words}", *sources, f"bands, limits and coefficients: {FROM_MEMORY}", SCREENING),
+        )
 
     def to_dict(self) -> dict[str, Any]:
         """JSON-safe content."""
@@ -78,8 +85,9 @@ class Screening(Shown):
             "species": self.species.text,
             "groups": None if self.groups is None else {group.name: count for group, count in self.groups.items()},
             "origin": self.origin,
-            "checks": [{"name": c.name, "value": c.value, "finding": c.finding, "not_proof": c.not_proof}
-                       for c in self.checks],
+            "checks": [
+                {"name": c.name, "value": c.value, "finding": c.finding, "not_proof": c.not_proof} for c in self.checks
+            ],
         }
 
 
@@ -103,15 +111,20 @@ def energetic_screen(species: Species | Declaration, *, groups: str = "", struct
         unknown = Check("composition", "formula not known", "nothing can be screened", "anything")
         return Screening(chosen, found, origin, (unknown,))
     formula = chosen.formula
-    return Screening(chosen, found, origin, (
-        *_balance(formula, found),
-        *_azide(formula, found),
-        *_dilution(formula, found),
-        *_peroxide(formula, found, settings),
-        *_energy(formula, found, settings),
-        *_waivers(formula, found, settings),
-        *_yoshida(settings),
-    ))
+    return Screening(
+        chosen,
+        found,
+        origin,
+        (
+            *_balance(formula, found),
+            *_azide(formula, found),
+            *_dilution(formula, found),
+            *_peroxide(formula, found, settings),
+            *_energy(formula, found, settings),
+            *_waivers(formula, found, settings),
+            *_yoshida(settings),
+        ),
+    )
 
 
 def _balance(formula: Formula, found: Mapping[Group, int] | None) -> list[Check]:
@@ -141,8 +154,12 @@ def _azide(formula: Formula, found: Mapping[Group, int] | None) -> list[Check]:
         words += "; more nitrogen than carbon"
     return [
         Check("(C + O)/N of an azide", number(total, 2), words, "thermal stability: measure it"),
-        Check("C/N of an azide", number(carbon, 2), energetic.azide_limit(carbon),
-              "stability at that scale; the tiers are one fact sheet's"),
+        Check(
+            "C/N of an azide",
+            number(carbon, 2),
+            energetic.azide_limit(carbon),
+            "stability at that scale; the tiers are one fact sheet's",
+        ),
     ]
 
 
@@ -177,17 +194,37 @@ def _energy(formula: Formula, found: Mapping[Group, int] | None, settings: Setti
     measured = settings.value("Qdec", _J_PER_G)
     if measured is not None:
         size = abs(measured.value)
-        words = f"above {energetic.WAIVER_ENERGY:.0f} J/g: {TEST}" if size >= energetic.WAIVER_ENERGY else \
-            f"below {energetic.WAIVER_ENERGY:.0f} J/g"
-        checks.append(Check("decomposition energy, measured", f"{number(size, 0)} J/g released", words,
-                            "another cell, heating rate or purity"))
+        words = (
+            f"above {energetic.WAIVER_ENERGY:.0f} J/g: {TEST}"
+            if size >= energetic.WAIVER_ENERGY
+            else f"below {energetic.WAIVER_ENERGY:.0f} J/g"
+        )
+        checks.append(
+            Check(
+                "decomposition energy, measured",
+                f"{number(size, 0)} J/g released",
+                words,
+                "another cell, heating rate or purity",
+            )
+        )
     if found:
-        low, high = (energetic.specific_energy(sum(value(g) * n for g, n in found.items()), float(formula.molar_mass))
-                     for value in (_low, _high))
-        words = f"up to more than {energetic.WAIVER_ENERGY:.0f} J/g: {TEST}" if high >= energetic.WAIVER_ENERGY else \
-            f"below {energetic.WAIVER_ENERGY:.0f} J/g"
-        checks.append(Check("decomposition energy by groups", f"{number(low, 0)} to {number(high, 0)} J/g released",
-                            f"provisional: {words}", "the energy of this substance: measure it"))
+        low, high = (
+            energetic.specific_energy(sum(value(g) * n for g, n in found.items()), float(formula.molar_mass))
+            for value in (_low, _high)
+        )
+        words = (
+            f"up to more than {energetic.WAIVER_ENERGY:.0f} J/g: {TEST}"
+            if high >= energetic.WAIVER_ENERGY
+            else f"below {energetic.WAIVER_ENERGY:.0f} J/g"
+        )
+        checks.append(
+            Check(
+                "decomposition energy by groups",
+                f"{number(low, 0)} to {number(high, 0)} J/g released",
+                f"provisional: {words}",
+                "the energy of this substance: measure it",
+            )
+        )
     elif found is None:
         checks.append(Check("decomposition energy by groups", "none", NOT_DECLARED, "stability"))
     return checks
@@ -206,8 +243,12 @@ def _waivers(formula: Formula, found: Mapping[Group, int] | None, settings: Sett
     sadt = settings.celsius("SADT")
     energy = None if measured is None else abs(measured.value)
     balance = energetic.un_oxygen_balance(formula)
-    small = energy is not None and energy < energetic.WAIVER_ENERGY and onset is not None \
+    small = (
+        energy is not None
+        and energy < energetic.WAIVER_ENERGY
+        and onset is not None
         and onset.value < energetic.WAIVER_ONSET
+    )
     met = []
     if found is not None and not any(group.listed == "explosive" for group in found):
         met.append("no listed group declared")
@@ -220,17 +261,35 @@ def _waivers(formula: Formula, found: Mapping[Group, int] | None, settings: Sett
         words = f"acceptance procedure need not apply: {words}"
     elif found is None:
         words += f" ({NOT_DECLARED})"
-    checks = [Check("waiver, explosives class", f"{number(balance, 0)} % (C, H, O)", words,
-                    "stability; only that a test series need not be run")]
+    checks = [
+        Check(
+            "waiver, explosives class",
+            f"{number(balance, 0)} % (C, H, O)",
+            words,
+            "stability; only that a test series need not be run",
+        )
+    ]
     reasons = []
     if energy is not None and energy < energetic.SELF_REACTIVE_ENERGY:
         reasons.append(f"measured energy below {energetic.SELF_REACTIVE_ENERGY:.0f} J/g")
     if sadt is not None and sadt.value > energetic.SELF_REACTIVE_SADT:
         reasons.append(f"SADT above {energetic.SELF_REACTIVE_SADT:.0f} °C for a 50 kg package")
-    given = [text for text in (None if energy is None else f"{number(energy, 0)} J/g",
-                               None if sadt is None else f"SADT {number(sadt.value, 0)} °C") if text]
-    checks.append(Check("waiver, self-reactive class", ", ".join(given) or "not measured",
-                        "; ".join(reasons) or "no waiver on the data entered", "stability in a larger package"))
+    given = [
+        text
+        for text in (
+            None if energy is None else f"{number(energy, 0)} J/g",
+            None if sadt is None else f"SADT {number(sadt.value, 0)} °C",
+        )
+        if text
+    ]
+    checks.append(
+        Check(
+            "waiver, self-reactive class",
+            ", ".join(given) or "not measured",
+            "; ".join(reasons) or "no waiver on the data entered",
+            "stability in a larger package",
+        )
+    )
     return checks
 
 
@@ -243,8 +302,13 @@ def _yoshida(settings: Settings) -> list[Check]:
     for cautious, word in ((False, "Yoshida"), (True, "Yoshida, cautious slopes")):
         propagation, shock = energetic.yoshida(size, onset.value, cautious=cautious)
         signs = [name for name, figure in (("propagates", propagation), ("shock sensitive", shock)) if figure >= 0]
-        checks.append(Check(word, f"EP {number(propagation, 3)}, SS {number(shock, 3)} from "
-                                  f"{number(energetic.joule_to_calorie(size), 0)} cal/g",
-                            f"positive: {', '.join(signs)}; test" if signs else "negative, which proves nothing",
-                            "absence of explosive properties"))
+        checks.append(
+            Check(
+                word,
+                f"EP {number(propagation, 3)}, SS {number(shock, 3)} from "
+                f"{number(energetic.joule_to_calorie(size), 0)} cal/g",
+                f"positive: {', '.join(signs)}; test" if signs else "negative, which proves nothing",
+                "absence of explosive properties",
+            )
+        )
     return checks

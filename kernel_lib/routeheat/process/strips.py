@@ -64,7 +64,10 @@ def row(found: Criticality, line: int | None = None) -> Row:
             dots.append(_dot("MTSR", step.mtsr, step.k, "disc"))
         if isinstance(step.process, Value) and isinstance(step.mtsr, Value):
             bar = (step.process.value, step.mtsr.value)
-    for label, limit, look in (("MTT", step.mtt, "square"), (_TD24, step.td24, "triangle")):
+    limits: tuple[tuple[Rich | str, Limit | NotAssessed, Look], ...] = (
+        ("MTT", step.mtt, "square"), (_TD24, step.td24, "triangle"),
+    )  # fmt: skip
+    for label, limit, look in limits:
         if isinstance(limit, Limit):
             dots.append(_dot(label, limit.celsius, step.k, look, reached=False))
     details = (("everything charged at once", found.misfeed.words),)

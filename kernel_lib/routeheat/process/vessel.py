@@ -132,9 +132,7 @@ class VesselStep(Shown):
         return vessel_views.to_dict(self)
 
 
-def vessel(
-    step: Step | StepHeat, *, route: Route | None = None, thresholds: Thresholds = DEFAULTS
-) -> VesselStep:
+def vessel(step: Step | StepHeat, *, route: Route | None = None, thresholds: Thresholds = DEFAULTS) -> VesselStep:
     """What a step would do in the vessel.
 
     A step of a profile, or a step with its ``route``, has the limiting reactant and the derived heat of the route; a
@@ -147,8 +145,9 @@ def vessel(
     charged = charges(basis.step, settings, basis.limiting)
     heat = heat_of(basis)
     concentration = concentration_of(basis.step, charged)
-    heat_capacity = stated(None if basis.step.heat_capacity is None
-                           else from_measured(basis.step.heat_capacity, KJ_PER_KG_K), "cp")
+    heat_capacity = stated(
+        None if basis.step.heat_capacity is None else from_measured(basis.step.heat_capacity, KJ_PER_KG_K), "cp"
+    )
     process = stated(None if basis.step.temperature is None else from_measured(basis.step.temperature, CELSIUS), "T")
     rise = rise_of(settings, heat, concentration, heat_capacity)
     found = accumulation(basis.step, settings, basis.limiting)
@@ -185,8 +184,9 @@ def vessel(
         gas=gas,
         feed=feed_check(settings, typed_mode, heat, process, limiting_mol, mass, thresholds),
         boiling=boiling_of(settings, mtsr, limit, cp, decomposition, mass),
-        scale=cooling_against_scale(settings.number("U", HEAT_TRANSFER, 300.0),
-                                    settings.number("density", DENSITY, 1000.0)),
+        scale=cooling_against_scale(
+            settings.number("U", HEAT_TRANSFER, 300.0), settings.number("density", DENSITY, 1000.0)
+        ),
         u_typed="U" in settings,
         time_constant_s=time_constant_of(settings, mass, cp),
         decomposition=exothermic_energy(settings.value("Qdec", KJ_PER_KG)),

@@ -58,8 +58,11 @@ def basis_of(step: Step | StepHeat, route: Route | None) -> Basis:
     if route is not None:
         links = read_links(route)
         if step.label not in links.limiting:
-            raise links.faults[0] if links.faults else RouteError(f"{step.label} is no step of route {route.name}",
-                                                                  route.name, step.label)
+            raise (
+                links.faults[0]
+                if links.faults
+                else RouteError(f"{step.label} is no step of route {route.name}", route.name, step.label)
+            )
         molar = molar_heat(step, route.known, route.k)
         return Basis(step, links.limiting[step.label], molar.heat, molar.origin, route.k)
     uses = reactants(step)
@@ -144,8 +147,10 @@ def misfeed_of(process: Value | NotAssessed, rise: Value | NotAssessed) -> Value
 
 
 def _no_mtsr(process: Value | NotAssessed, rise: Value | NotAssessed) -> NotAssessed:
-    missing = (*(item for item in ("T",) if isinstance(process, NotAssessed)),
-               *(rise.missing if isinstance(rise, NotAssessed) else ()))
+    missing = (
+        *(item for item in ("T",) if isinstance(process, NotAssessed)),
+        *(rise.missing if isinstance(rise, NotAssessed) else ()),
+    )
     return NotAssessed("no MTSR", missing, rise.reason if isinstance(rise, NotAssessed) else "")
 
 
@@ -185,8 +190,13 @@ def gas_of(basis: Basis, settings: Settings, limiting_mol: float | None, found: 
 
 
 def feed_check(
-    settings: Settings, mode: Mode, heat: Value | NotAssessed, process: Value | NotAssessed,
-    limiting_mol: float | None, mass: float | None, thresholds: Thresholds,
+    settings: Settings,
+    mode: Mode,
+    heat: Value | NotAssessed,
+    process: Value | NotAssessed,
+    limiting_mol: float | None,
+    mass: float | None,
+    thresholds: Thresholds,
 ) -> FeedCheck | NotAssessed:
     """Heat rate of a feed against the jacket, or what is missing for it."""
     what = "feed and cooling not checked"
@@ -195,8 +205,14 @@ def feed_check(
     hours, u = settings.value("feed", HOURS), settings.value("U", HEAT_TRANSFER)
     area, jacket = settings.value("area", AREA), settings.celsius("jacket")
     if (
-        hours is None or u is None or area is None or jacket is None or limiting_mol is None or mass is None
-        or isinstance(heat, NotAssessed) or isinstance(process, NotAssessed)
+        hours is None
+        or u is None
+        or area is None
+        or jacket is None
+        or limiting_mol is None
+        or mass is None
+        or isinstance(heat, NotAssessed)
+        or isinstance(process, NotAssessed)
     ):
         amount = limiting_mol if limiting_mol is not None else mass
         named: Mapping[str, object] = {
@@ -204,7 +220,9 @@ def feed_check(
             "T": None if isinstance(process, NotAssessed) else process,
             "size or mass": amount,
             "conc": 0.0 if amount is None or None not in (limiting_mol, mass) else None,
-            "U": u, "area": area, "jacket": jacket,
+            "U": u,
+            "area": area,
+            "jacket": jacket,
         }
         return NotAssessed(what, tuple(name for name, item in named.items() if item is None))
     if min(hours.value, u.value, area.value, limiting_mol, mass) <= 0:
@@ -215,7 +233,13 @@ def feed_check(
     part = settings.value("fedpart", PURE)
     sensible = cold is not None and cp is not None and part is not None
     built = Vessel(
-        limiting_mol, mass, heat.value, u.value, area.value, process.value, jacket.value,
+        limiting_mol,
+        mass,
+        heat.value,
+        u.value,
+        area.value,
+        process.value,
+        jacket.value,
         settings.number("stirring", KILOWATT, 0.0),
         mass * part.value if part is not None and sensible else 0.0,
         cp.value if cp is not None and sensible else 0.0,
@@ -225,8 +249,12 @@ def feed_check(
 
 
 def boiling_of(
-    settings: Settings, mtsr: Value | NotAssessed, limit: Limit | NotAssessed, cp: Value | None,
-    decomposition: HeatRate | NotAssessed, mass: float | None,
+    settings: Settings,
+    mtsr: Value | NotAssessed,
+    limit: Limit | NotAssessed,
+    cp: Value | None,
+    decomposition: HeatRate | NotAssessed,
+    mass: float | None,
 ) -> Boiling | NotAssessed:
     """Evaporation between MTT and MTSR in an open vessel."""
     what = "evaporation not assessed"
@@ -274,9 +302,7 @@ def provisional_of(
     return tuple(dict.fromkeys(found))
 
 
-def faults_of(
-    settings: Settings, concentration: Value | NotAssessed, cp: Value | NotAssessed
-) -> tuple[str, ...]:
+def faults_of(settings: Settings, concentration: Value | NotAssessed, cp: Value | NotAssessed) -> tuple[str, ...]:
     """Inputs that contradict themselves or cannot be."""
     found = []
     if settings.flag("batch") and "feed" in settings:

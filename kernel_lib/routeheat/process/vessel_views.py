@@ -70,22 +70,32 @@ def _heat_rows(step: VesselStep) -> list[_Row]:
         _row("adiabatic rise", step.rise, "K", "all of it at once", k),
     ]
     if isinstance(step.rise, Value) and step.rise.value >= 0:
-        levels = [severity(step.rise.value, gas=step.gas.per_mol > 0, levels=n, thresholds=step.thresholds).text
-                  for n in (3, 4)]
+        levels = [
+            severity(step.rise.value, gas=step.gas.per_mol > 0, levels=n, thresholds=step.thresholds).text
+            for n in (3, 4)
+        ]
         rows.append(("severity", "; ".join(levels), "", "from the adiabatic rise"))
     if isinstance(step.specific_heat, Value) and step.specific_heat.value < 0:
         heat = step.specific_heat.value
         methanol = runaway.evaporated_part(heat, runaway.METHANOL_LATENT_KJ_PER_KG)
-        words = (f"evaporates {number(methanol, 2)} kg of methanol per kg, or lifts the mixture by "
-                 f"{number(runaway.height_equivalent_km(heat), 1)} km, or throws it at "
-                 f"{number(runaway.speed_equivalent_km_per_s(heat), 2)} km/s")
+        words = (
+            f"evaporates {number(methanol, 2)} kg of methanol per kg, or lifts the mixture by "
+            f"{number(runaway.height_equivalent_km(heat), 1)} km, or throws it at "
+            f"{number(runaway.speed_equivalent_km_per_s(heat), 2)} km/s"
+        )
         rows.append(("energy equivalent", words, "", f"methanol at 1100 kJ/kg, {FROM_MEMORY}"))
     if step.decomposition is not None:
         rows.append(_row("decomposition energy", step.decomposition, "kJ/kg", "typed", k, 0))
         if isinstance(step.heat_capacity, Value) and step.heat_capacity.value > 0:
             rise = runaway.specific_adiabatic_rise(step.decomposition.value, step.heat_capacity.value)
-            rows.append(("adiabatic rise, decomposition", number(rise, 0), "K",
-                         severity(rise, gas=True, thresholds=step.thresholds).text))
+            rows.append(
+                (
+                    "adiabatic rise, decomposition",
+                    number(rise, 0),
+                    "K",
+                    severity(rise, gas=True, thresholds=step.thresholds).text,
+                )
+            )
     return rows
 
 
@@ -98,8 +108,14 @@ def _runaway_rows(step: VesselStep) -> list[_Row]:
     rows.append(_row("process temperature", step.process, "°C", "typed", k))
     if step.exothermic is False:
         if isinstance(step.rise, Value):
-            rows.append(("loss of heating", number(-step.rise.value, 1), "K",
-                         "could cool by this much; what has not reacted accumulates until heating returns"))
+            rows.append(
+                (
+                    "loss of heating",
+                    number(-step.rise.value, 1),
+                    "K",
+                    "could cool by this much; what has not reacted accumulates until heating returns",
+                )
+            )
     else:
         rows += [
             _row("MTSR", step.mtsr, "°C", "worst instant", k),
@@ -126,17 +142,29 @@ def _feed_rows(step: VesselStep) -> list[_Row]:
         rows = [
             ("heat rate while feeding", number(check.heat_rate_kw, 2), "kW", f"feed {number(check.feed_h, 2)} h"),
             ("heat rate while feeding", number(check.specific_heat_rate, 1), "W/kg", "of final mass"),
-            ("sensible heat of the feed", number(check.sensible_kw, 2) if check.sensible else "not included", "kW",
-             "taken up" if check.sensible else "type feedT, feedcp and fedpart"),
+            (
+                "sensible heat of the feed",
+                number(check.sensible_kw, 2) if check.sensible else "not included",
+                "kW",
+                "taken up" if check.sensible else "type feedT, feedcp and fedpart",
+            ),
             ("jacket capacity", number(check.vessel.capacity_kw, 2), "kW", "U A ΔT"),
             ("load", number(100 * check.load, 0), "%", check.verdict),
         ]
-        for name, hours in (("at full capacity", check.shortest_h),
-                            (f"with a margin of {check.margin:g}", check.shortest_with_margin_h)):
+        for name, hours in (
+            ("at full capacity", check.shortest_h),
+            (f"with a margin of {check.margin:g}", check.shortest_with_margin_h),
+        ):
             rows.append(("shortest feed", "none" if hours is None else number(hours, 2), "h", name))
     if step.time_constant_s is not None:
-        rows.append(("thermal time constant", number(step.time_constant_s, 0), "s",
-                     f"half of the difference in {number(half_time(step.time_constant_s), 0)} s"))
+        rows.append(
+            (
+                "thermal time constant",
+                number(step.time_constant_s, 0),
+                "s",
+                f"half of the difference in {number(half_time(step.time_constant_s), 0)} s",
+            )
+        )
     return rows
 
 
@@ -148,22 +176,28 @@ def _gas_rows(step: VesselStep) -> list[_Row]:
     state = f"at {number(gas.celsius, 0)} °C and {number(gas.pressure_pa / 1000, 1)} kPa, ideal"
     rows.append(("gas volume", number(1000 * gas.volume_per_mol, 1), "L/mol", state))
     if gas.volume_rate is not None and gas.per_hour is not None:
-        rows.append(("gas rate while feeding", number(gas.volume_rate, 2), "m³/h",
-                     f"{number(gas.per_hour, 1)} mol/h, {state}"))
+        rows.append(
+            ("gas rate while feeding", number(gas.volume_rate, 2), "m³/h", f"{number(gas.per_hour, 1)} mol/h, {state}")
+        )
     return rows
 
 
 def scale_table(step: VesselStep) -> Table:
     """Specific cooling of typical vessels from 0.1 L to 10 m³."""
     columns = (
-        Column("volume", "Volume", "L", "right", 1), Column("area", "Jacketed area", "m²", "right", 2),
+        Column("volume", "Volume", "L", "right", 1),
+        Column("area", "Jacketed area", "m²", "right", 2),
         Column("per_kelvin", "Specific cooling", "W/(kg K)", "right", 2),
         Column("at_50", "at 50 K", "W/kg", "right", 0),
     )
     rows = tuple((p.volume_m3 * 1000, p.area_m2, p.per_kelvin, p.at_difference) for p in step.scale)
     u = step.scale[0].u_w_per_m2_k
-    return Table(f"Cooling against scale, U {number(u, 0)} W/(m² K){'' if step.u_typed else ' (assumed: none typed)'}",
-                 columns, rows, (f"typical areas are {FROM_MEMORY}; use the data of the vessel when they are known",))
+    return Table(
+        f"Cooling against scale, U {number(u, 0)} W/(m² K){'' if step.u_typed else ' (assumed: none typed)'}",
+        columns,
+        rows,
+        (f"typical areas are {FROM_MEMORY}; use the data of the vessel when they are known",),
+    )
 
 
 def as_dict(item: Value | Limit | NotAssessed | Any) -> dict[str, Any] | None:
@@ -173,8 +207,23 @@ def as_dict(item: Value | Limit | NotAssessed | Any) -> dict[str, Any] | None:
 
 def to_dict(step: VesselStep) -> dict[str, Any]:
     """JSON-safe content of a step in the vessel."""
-    names = ("heat", "concentration", "heat_capacity", "specific_heat", "rise", "accumulation", "process", "mtsr",
-             "misfeed_mtsr", "mtt", "td24", "gas", "feed", "boiling", "decomposition")
+    names = (
+        "heat",
+        "concentration",
+        "heat_capacity",
+        "specific_heat",
+        "rise",
+        "accumulation",
+        "process",
+        "mtsr",
+        "misfeed_mtsr",
+        "mtt",
+        "td24",
+        "gas",
+        "feed",
+        "boiling",
+        "decomposition",
+    )
     return {
         "label": step.label,
         "equation": step.reaction.text,

@@ -115,9 +115,12 @@ class Waste(Shown):
     def table(self) -> Table:
         """One row a step, the whole last."""
         columns = (
-            Column("step", "Step"), Column("atom_economy", "Atom economy", "%", "right", 1),
-            Column("rme", "RME", "%", "right", 1), Column("pmi", "PMI", "kg/kg", "right", 2),
-            Column("e_factor", "E factor", "kg/kg", "right", 2), Column("charged", "Inputs counted"),
+            Column("step", "Step"),
+            Column("atom_economy", "Atom economy", "%", "right", 1),
+            Column("rme", "RME", "%", "right", 1),
+            Column("pmi", "PMI", "kg/kg", "right", 2),
+            Column("e_factor", "E factor", "kg/kg", "right", 2),
+            Column("charged", "Inputs counted"),
         )
         rows = tuple(_row(item) for item in (*self.steps, self.whole))
         notes = (
@@ -125,13 +128,18 @@ class Waste(Shown):
             "a step counts what is charged to it, intermediates included; the whole counts what is bought",
             WASTE,
         )
-        return Table(f"Waste of route {self.route}, per kg of {self.product}", columns, rows, notes,
-                     frozenset([len(rows) - 1]))
+        return Table(
+            f"Waste of route {self.route}, per kg of {self.product}", columns, rows, notes, frozenset([len(rows) - 1])
+        )
 
     def to_dict(self) -> dict[str, Any]:
         """JSON-safe content."""
-        return {"route": self.route, "product": self.product.text, "steps": [item.to_dict() for item in self.steps],
-                "whole": self.whole.to_dict()}
+        return {
+            "route": self.route,
+            "product": self.product.text,
+            "steps": [item.to_dict() for item in self.steps],
+            "whole": self.whole.to_dict(),
+        }
 
 
 def _row(item: Metrics) -> tuple[Cell, ...]:
@@ -211,13 +219,17 @@ def _step(item: StepHeat, charged: Charges, boundary: Boundary) -> Metrics:
     product = made * per_kg
     inputs = _inputs(charged, boundary.water)
     reactants = sum(part.mass or 0.0 for part in charged.items if part.species is not None)
-    return Metrics(item.label, economy, mass_intensity(inputs, product), e_factor(inputs, product),
-                   mass_efficiency(product, reactants), own)
+    return Metrics(
+        item.label,
+        economy,
+        mass_intensity(inputs, product),
+        e_factor(inputs, product),
+        mass_efficiency(product, reactants),
+        own,
+    )
 
 
-def _whole(
-    found: Profile, listed: list[StepHeat], charged: dict[str, Charges], boundary: Boundary
-) -> Metrics:
+def _whole(found: Profile, listed: list[StepHeat], charged: dict[str, Charges], boundary: Boundary) -> Metrics:
     label = "whole route"
     try:
         economy = _economy(net_equation(found.found.links), found.route.makes)
@@ -232,8 +244,14 @@ def _whole(
         refused = NotAssessed("no mass balance", tuple(dict.fromkeys(missing)))
         return Metrics(label, economy, refused, refused, refused, boundary)
     bought, reactants = _bought(found, listed, charged, boundary)
-    return Metrics(label, economy, mass_intensity(bought, per_kg), e_factor(bought, per_kg),
-                   mass_efficiency(per_kg, reactants), boundary)
+    return Metrics(
+        label,
+        economy,
+        mass_intensity(bought, per_kg),
+        e_factor(bought, per_kg),
+        mass_efficiency(per_kg, reactants),
+        boundary,
+    )
 
 
 def _bought(
@@ -269,4 +287,3 @@ def _extra(item: StepHeat, part: Charge) -> float:
 
 def _water(species: Species, charged: dict[str, Charges]) -> bool:
     return any(part.water for item in charged.values() for part in item.items if part.species == species)
-

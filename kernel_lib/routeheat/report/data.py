@@ -29,7 +29,7 @@ def heat_text(heat: Heat | None) -> str:
     """A typed heat as printed; ``not typed`` when there is none."""
     if heat is None:
         return "not typed"
-    text = heat.text.replace("degC", "°C")
+    text = heat.typed.replace("degC", "°C")
     return text.replace("-", MINUS, 1) if heat.amount is not None and heat.amount.value < 0 else text
 
 
@@ -50,7 +50,9 @@ def data_tables(sheet: Sheet) -> tuple[Table, ...]:
 
 def _known(row: Row) -> Iterator[tuple[Cell, ...]]:
     kind = "reaction" if row.kind == "reaction" else row.kind
-    yield (row.label, f"heat of {kind}, known row", row.reaction.rich, heat_text(row.heat), row.source or NOT_STATED)
+    mark = ", estimated" if row.estimated else ""
+    source = row.source or NOT_STATED
+    yield (row.label, f"heat of {kind}, known row{mark}", row.reaction.rich, heat_text(row.heat), source)
     yield from _settings(row.label, row.settings, row.reaction.rich, row.source)
 
 
@@ -64,7 +66,8 @@ def _step(step: Step) -> Iterator[tuple[Cell, ...]]:
     row = step.row
     source = row.source or NOT_STATED
     what = "side row" if step.side_of else "step"
-    kind = f"heat of {what}, typed" if row.heat is not None else f"heat of {what}, not typed"
+    mark = ", estimated" if row.estimated else ""
+    kind = f"heat of {what}, typed{mark}" if row.heat is not None else f"heat of {what}, not typed"
     yield (row.label, kind, row.reaction.rich, heat_text(row.heat), source)
     for name, value in (
         ("yield", step.yield_), ("process temperature", step.temperature), ("concentration", step.concentration),

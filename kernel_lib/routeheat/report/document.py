@@ -7,7 +7,7 @@ typed sheet in the appendix keeps the whole).
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass, replace
 from typing import Literal
 
@@ -229,6 +229,13 @@ def numbered(sections: Iterable[Section]) -> tuple[Section, ...]:
                 yield block
 
     return tuple(replace(section, blocks=tuple(count(section.blocks))) for section in sections)
+
+
+def led(blocks: Sequence[Block]) -> Iterator[tuple[Block, bool]]:
+    """Every block, and whether it is a paragraph that leads to the table or figure behind it."""
+    for index, block in enumerate(blocks):
+        following = blocks[index + 1 : index + 2]
+        yield block, isinstance(block, Paragraph) and any(isinstance(x, TableBlock | FigureBlock) for x in following)
 
 
 def blocks_of(document: Document) -> Iterator[Block]:

@@ -7,10 +7,10 @@ from decimal import Decimal
 from routeheat.chem.measured import Measured, decimal_text
 from routeheat.chem.route import Sheet
 from routeheat.chem.row import Row, Rows
-from routeheat.notation.keys import names_in
+from routeheat.notation.keys import HEATS, names_in
 from routeheat.notation.write import write_sheet
 
-TEXT_COLUMNS: tuple[str, ...] = tuple(name for name in names_in("known") if name != "dH")
+TEXT_COLUMNS: tuple[str, ...] = tuple(name for name in names_in("known") if name not in HEATS)
 """Keys of a known row that hold a text; each may be a column."""
 KNOWN_COLUMNS: tuple[str, ...] = (
     "label", "reaction", "heat", "unit", "uncertainty", "k", "per", "temperature", *TEXT_COLUMNS,
@@ -26,7 +26,10 @@ def known_cells(row: Row) -> tuple[KnownCell, ...]:
     """One cell for each of :data:`KNOWN_COLUMNS`; numbers keep the decimals that were typed."""
     found: dict[str, KnownCell] = {"label": row.label, "reaction": equation(row), "heat": NO_HEAT}
     heat = row.heat
-    if heat is not None:
+    if heat is not None and heat.key != "dH":
+        # the key says what the number means, so the cell holds all of it
+        found["heat"] = heat.typed
+    elif heat is not None:
         found["heat"] = heat.symbol
         if heat.amount is not None:
             found |= _amount(heat.amount)

@@ -8,7 +8,7 @@ from dataclasses import replace
 from routeheat.chem.route import Sheet
 from routeheat.errors import RouteheatError
 from routeheat.hess.combination import Combination
-from routeheat.present.markup import Rich, plain
+from routeheat.present.markup import Rich
 from routeheat.process.cautions import SHORT
 from routeheat.process.compare import Difference
 from routeheat.process.next_measurement import NextMeasurement, next_measurement
@@ -21,6 +21,7 @@ ATTAINABLE = 5.0
 PART = 0.5
 """Part of its present standard uncertainty to which another heat is taken to be measurable; a choice."""
 _LISTED = 12
+_DUST = 1e-6
 _NO_CHANGE = "does not change it"
 _ASSUMED = (
     "Assumed here: a measurement halves the standard uncertainty that a heat has now; where none is stated it reaches "
@@ -38,7 +39,8 @@ def next_heat(matter: Matter) -> Iterator[Block]:
         except RouteheatError as problem:
             yield Paragraph(line(f"Not assessed: {problem}."), "caution")
             continue
-        yield Paragraph(line(f"For the {found.name}: {found.sentence}"))
+        name = found.short if isinstance(target, Combination) else found.name
+        yield Paragraph(line(f"For the {name}: {found.sentence}"))
         yield Paragraph(line(_ASSUMED))
         yield from _tables(found, _equations(matter.sheet))
         return
@@ -62,12 +64,22 @@ def _asked(target: Target, unit: str, matter: Matter) -> NextMeasurement:
     routes = [item.route for item in matter.profiles]
     direct = ATTAINABLE
     if isinstance(target, Combination) and target.heat.complete and target.heat.u:
-        direct = PART * target.heat.u
+        direct = _part(target.heat.u)
     now = next_measurement(target, attainable=direct, known=matter.sheet.known, routes=routes, unit=unit)
-    own = {item.label: PART * item.u_now for item in now.effects if item.u_now and item.label != _itself(target)}
-    return next_measurement(
+    own = {item.label: _part(item.u_now) for item in now.effects if item.u_now and item.label != _itself(target)}
+    found = next_measurement(
         target, attainable=direct, known=matter.sheet.known, routes=routes, unit=unit, attainable_for=own
     )
+    # what rounding leaves of an uncertainty that a perfect measurement removes is no uncertainty
+    least = _DUST * found.heat.u
+    return replace(found, effects=tuple(
+        replace(item, u_least=0.0) if item.u_least < least else item for item in found.effects
+    ))  # fmt: skip
+
+
+def _part(u: float) -> float:
+    """The assumed part of an uncertainty, with two significant digits as an uncertainty is stated."""
+    return float(f"{PART * u:.2g}")
 
 
 def _itself(target: Target) -> str:
@@ -87,9 +99,12 @@ def _tables(found: NextMeasurement, equations: Mapping[str, Rich]) -> Iterator[B
     table = shown.table()
     notes = [note for note in table.notes if note != shown.sentence]
     if len(telling) > _LISTED:
-        notes.append(f"{len(telling) - _LISTED} more measurements help less")
+        notes.append(f"measurements that help less and are not listed: {len(telling) - _LISTED}")
     if others := len(found.effects) - len(telling):
-        notes.append(f"{others} other measurements would not change it")
-    rows = tuple((row[0], equations.get(plain(row[0]), row[1]), *row[2:]) for row in table.rows)
+        notes.append(f"measurements that would not change it: {others}")
+    rows = tuple(
+        (row[0], equations.get(item.label, row[1]), *row[2:])
+        for item, row in zip(shown.effects, table.rows, strict=True)
+    )
     yield table_block("next-measurements", replace(table, rows=rows, notes=tuple(notes)), SHORT)
     yield table_block("next-contributions", shown.contribution_table())

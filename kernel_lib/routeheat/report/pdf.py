@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import io
 from collections.abc import Iterator
-from itertools import pairwise
 from typing import Any
 
 from routeheat.draw.glyphs import LACKING, LACKING_NOTE, font_file, shown, shown_rich
@@ -25,6 +24,7 @@ from routeheat.report.document import (
     Heading,
     Paragraph,
     TableBlock,
+    led,
     line,
 )
 from routeheat.report.figures import Printed, printed
@@ -106,9 +106,9 @@ class _Story:
         self.flowables.append(self._text(document.caution, "note"))
         for section in document.sections:
             self.flowables.append(self._entry(line(section.heading), "h1", section.name, 0))
-            for block, following in pairwise((*section.blocks, None)):
+            for block, leads in led(section.blocks):
                 made = list(self._block(block))
-                if isinstance(block, Paragraph) and isinstance(following, TableBlock | FigureBlock):
+                if leads:
                     made[-1].keepWithNext = 1
                 self.flowables += made
         if self.lacking:

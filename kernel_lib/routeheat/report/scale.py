@@ -19,6 +19,7 @@ from routeheat.process.cautions import FULL, SHORT
 from routeheat.process.criticality import ENDOTHERMIC
 from routeheat.process.feed import FeedCheck
 from routeheat.process.settings import Settings
+from routeheat.process.vessel import VesselStep
 from routeheat.report.document import (
     LONGEST_HEADING,
     Block,
@@ -94,8 +95,9 @@ def _group(found: AtScale, number: int) -> Iterator[Block]:
     if found.ranked and found.comparison.differences:
         yield table_block(f"scale-differences-{number}", found.comparison.difference_table())
     yield table_block(f"scale-checklist-{number}", _checklists(found))
+    seen: dict[str, VesselStep] = {}
     for index, item in enumerate(found.routes, 1):
-        yield from _route(item, f"{number}-{index}")
+        yield from _route(item, f"{number}-{index}", seen)
 
 
 def _routes(found: AtScale, number: int) -> Block:
@@ -132,7 +134,8 @@ def _checklists(found: AtScale) -> Table:
     return Table("Operations of the routes: given, declared nil, or open", columns, rows, notes)
 
 
-def _route(item: RouteAtScale, name: str) -> Iterator[Block]:
+def _route(item: RouteAtScale, name: str, seen: dict[str, VesselStep]) -> Iterator[Block]:
+    """One route; ``seen`` are the steps shown with an earlier one, which are not shown again."""
     heading = f"Route {item.profile.route.heading}"
     yield Heading(f"scale-route-{name}", line(heading, LONGEST_HEADING))
     if missing := _not_assessed(item.steps):
@@ -140,9 +143,14 @@ def _route(item: RouteAtScale, name: str) -> Iterator[Block]:
     tables = [(step.label, step.criticality.table()) for step in item.steps]
     title = f"Route {item.name}: criticality when cooling fails"
     yield table_block(f"scale-classes-{name}", together(title, _STEP, tables))
+    again = []
     for index, step in enumerate(item.steps, 1):
         if not _concerns_vessel(step.heat.step):
             continue
+        if seen.get(step.label) == step.vessel:
+            again.append(step.label)
+            continue
+        seen[step.label] = step.vessel
         # the notes of the step stand with its class, where they cannot be closed
         whole = step.vessel.table()
         columns = tuple(replace(column, align="left") for column in whole.columns)
@@ -150,6 +158,8 @@ def _route(item: RouteAtScale, name: str) -> Iterator[Block]:
         yield replace(table_block(f"scale-vessel-{name}-{index}", table, SHORT), folds=True)
         if isinstance(step.vessel.feed, FeedCheck):
             yield figure_block(f"scale-load-{name}-{index}", step.vessel.curve())
+    if again:
+        yield Paragraph(line(f"In the vessel as shown with an earlier route: {', '.join(again)}."))
 
 
 def _not_assessed(steps: Sequence[StepAtScale]) -> tuple[str, ...]:

@@ -6,6 +6,7 @@ from collections.abc import Iterable
 from fractions import Fraction
 from typing import Any
 
+from routeheat.chem.heat import HeatSum
 from routeheat.chem.measured import Measured
 from routeheat.chem.reaction import Reaction, Term
 from routeheat.chem.route import Declaration, Route, Sheet
@@ -21,6 +22,9 @@ def sheet_content(sheet: Sheet) -> dict[str, Any]:
         "species": [_declaration(item) for item in sheet.species.values()],
         "known": [_row(row) for row in sheet.known.values()],
         "targets": [_row(row) for row in sheet.targets.values()],
+        "unstated": None
+        if sheet.unstated is None
+        else {"u": _measured(sheet.unstated.u), "reason": sheet.unstated.reason},
         "routes": [_route(route) for route in sheet.routes.values()],
     }
 
@@ -73,16 +77,26 @@ def _heat(heat: Heat | None) -> dict[str, Any] | None:
     if heat is None:
         return None
     return {"typed": _measured(heat.amount), "per": None if heat.basis is None else heat.basis.text,
+            "key": heat.key, "portion": _measured(heat.portion), "analogue": heat.analogue,
             "symbol": heat.symbol, "temperature": _measured(heat.temperature), "text": heat.text}  # fmt: skip
 
 
+def _u(heat: HeatSum) -> str | None:
+    """Standard uncertainty of a typed heat; ``None`` when not all of it is stated. Of several data it is rounded."""
+    if not heat.complete:
+        return None
+    (datum, _), *others = heat.terms
+    return _exact(Fraction(repr(heat.u)) if others else datum.u)
+
+
 def _row(row: Row) -> dict[str, Any]:
-    datum = row.datum
-    numeric = datum is not None and not datum.symbol
+    heat = row.heat_sum()
+    numeric = heat is not None and not heat.unknowns
     return {
         "label": row.label, "kind": row.kind, "reaction": _reaction(row.reaction), "heat": _heat(row.heat),
-        "heat_as_written": {"value": str(datum.value), "u": _exact(datum.u), "unit": "kJ/mol"}
-        if datum is not None and numeric else None,
+        "heat_as_written": {"value": str(heat.exact), "u": _u(heat), "unit": "kJ/mol"}
+        if heat is not None and numeric else None,
+        "estimated": row.estimated,
         "source": row.source, "settings": _settings(row.settings),
     }  # fmt: skip
 

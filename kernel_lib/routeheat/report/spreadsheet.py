@@ -43,8 +43,9 @@ def read_known_heats(
     (exothermic negative), ``unit``, ``uncertainty`` with ``k`` (or ``standard uncertainty``), ``per`` (the species of a
     heat per amount or mass of it), ``temperature``, ``source``, ``note``. Units may stand in the header,
     ``heat / (kJ/mol)``, and the coverage factor, ``uncertainty (k = 2)``. A heat cell may hold everything as in a
-    sheet, ``-45.94(18) kJ/mol``; ``not entered`` stands for no heat. The header line is the first that has label,
-    reaction and heat; in a workbook without ``worksheet`` the first page that has one.
+    sheet, ``-45.94(18) kJ/mol``, also with another key, ``dU -3225.63 kJ/mol``; ``not entered`` stands for no heat. The
+    header line is the first that has label, reaction and heat; in a workbook without ``worksheet`` the first page that
+    has one.
 
     ``species`` are declared names (``sheet.species``), ``k`` the coverage factor of uncertainties that say none, and
     ``ignore`` headers that are not read. Numbers of a workbook are taken to the 15 digits it shows. Double quotation

@@ -8,6 +8,7 @@ from fractions import Fraction
 
 from routeheat.chem.measured import decimal_text
 from routeheat.errors import Fault
+from routeheat.notation.keys import AS_TYPED, HEATS
 from routeheat.notation.pasted import plain_characters
 from routeheat.report.known_columns import NO_HEAT, TEXT_COLUMNS
 from routeheat.report.spreadsheet_cells import Line
@@ -47,13 +48,17 @@ class TypedRow:
         self.add("label", self.plain("label"), "[", "]")
         self.add("reaction", self.plain("reaction"), " ")
         heat = self.plain("heat")
-        if heat.casefold() != NO_HEAT:
+        if heat.partition(" ")[0] in HEATS:
+            self.add("heat", heat, " | ")
+        elif heat.casefold() != NO_HEAT:
             self.add("heat", heat, " | dH ")
             self.add_rest_of_heat(heat, k)
         for name in TEXT_COLUMNS:
-            text = plain_characters(self.cell(name)).replace('"', "'")
-            quote = "" if name == "shared" else '"'
-            self.add(name, text, f" | {name} {quote}", quote)
+            text = plain_characters(self.cell(name))
+            if name in AS_TYPED:
+                self.add(name, text, f" | {name} ")
+            else:
+                self.add(name, text.replace('"', "'"), f' | {name} "', '"')
 
     def add(self, name: str, text: str, before: str = "", after: str = "") -> None:
         """Append what a column says, unless it says nothing."""

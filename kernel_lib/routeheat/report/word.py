@@ -5,7 +5,6 @@ from __future__ import annotations
 import datetime
 import io
 import zipfile
-from itertools import pairwise
 from typing import Any
 
 from routeheat.draw.paper import rendered
@@ -21,6 +20,7 @@ from routeheat.report.document import (
     Heading,
     Paragraph,
     TableBlock,
+    led,
     line,
 )
 from routeheat.report.figures import printed
@@ -68,9 +68,9 @@ class _Writer:
         self._runs(self.file.add_paragraph(style=_NOTE), document.caution)
         for section in document.sections:
             self.file.add_heading(section.heading, level=1)
-            for block, following in pairwise((*section.blocks, None)):
+            for block, leads in led(section.blocks):
                 self._block(block)
-                if isinstance(block, Paragraph) and isinstance(following, TableBlock | FigureBlock):
+                if leads:
                     self.file.paragraphs[-1].paragraph_format.keep_with_next = True
 
     def _block(self, block: Block) -> None:
@@ -119,6 +119,8 @@ class _Writer:
             paragraph = self.file.add_paragraph(style=_NOTE)
             if not index:
                 paragraph.paragraph_format.space_before = Pt(4)
+            # the last note never goes to a new page alone
+            paragraph.paragraph_format.keep_with_next = index == len(block.notes) - 2
             self._runs(paragraph, note)
 
     def _grid(self, grid: Grid) -> None:

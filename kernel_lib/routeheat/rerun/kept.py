@@ -7,13 +7,13 @@ from fractions import Fraction
 from pathlib import Path as FilePath
 from typing import Any, cast
 
+from routeheat._version import __version__
 from routeheat.chem.heat import Datum
 from routeheat.chem.route import Sheet
 from routeheat.errors import RouteheatError
 from routeheat.notation.write import write_sheet
 from routeheat.present.show import Shown
 from routeheat.present.table import Table
-from routeheat._version import __version__
 from routeheat.report.archive import VERSION, check_version
 from routeheat.report.plain_json import digest, exact, json_text, read_json_text
 from routeheat.report.table_json import table_content

@@ -65,6 +65,14 @@ def test_every_reference_state_is_a_species_of_its_element_alone() -> None:
         ("C6H5NO2(l)", "6 C(s, graphite) + 5/2 H2(g) + 1/2 N2(g) + O2(g) -> C6H5NO2(l)"),
         ("C(s, diamond)", "C(s, graphite) -> C(s, diamond)"),
         ("O3(g)", "3/2 O2(g) -> O3(g)"),
+        ("P4O10(s)", "4 P(s, white) + 5 O2(g) -> P4O10(s)"),
+        ("CBrI(l)", "C(s, graphite) + 1/2 Br2(l) + 1/2 I2(s) -> CBrI(l)"),
+        ("HgS(s)", "Hg(l) + S(s, rhombic) -> HgS(s)"),
+        ("Na^+(aq)", "Na(s) + H^+(aq) -> Na^+(aq) + 1/2 H2(g)"),
+        ("Cl^-(aq)", "1/2 Cl2(g) + 1/2 H2(g) -> Cl^-(aq) + H^+(aq)"),
+        ("SO4^2-(aq)", "S(s, rhombic) + 2 O2(g) + H2(g) -> SO4^2-(aq) + 2 H^+(aq)"),
+        ("NH4^+(aq)", "1/2 N2(g) + 3/2 H2(g) + H^+(aq) -> NH4^+(aq)"),
+        ("OH^-(aq)", "1/2 O2(g) + H2(g) -> OH^-(aq) + H^+(aq)"),
     ],
 )
 def test_formation_starts_from_the_reference_states(typed: str, expanded: str) -> None:
@@ -75,7 +83,8 @@ def test_formation_starts_from_the_reference_states(typed: str, expanded: str) -
     ("typed", "reason"),
     [
         ("O2(g)", "is the reference state of its element"),
-        ("Na^+(aq)", "is an ion"),
+        ("Na^+(g)", "is an ion that is not in water"),
+        ("H^+(aq)", "is zero by definition"),
         ("D2O(l)", r"\[2H\] has no reference state here"),
     ],
 )

@@ -113,3 +113,13 @@ def test_scaling_scales_value_and_uncertainty(found: list[tuple[Fraction, HeatSu
     whole = HeatSum.total(found)
     assert whole.scaled(factor).exact == factor * whole.exact
     assert whole.scaled(factor).variance == factor**2 * whole.variance
+
+
+def test_a_sum_with_an_estimate_says_so() -> None:
+    guess = Datum("G", value=Fraction(-10), u=Fraction(20), estimated=True)
+    both = total((1, A), (1, guess))
+    assert both.estimated == ("G",)
+    assert both.reading.estimated
+    assert str(both) == "−110 ± 40 (k = 2, estimated) kJ/mol"
+    assert (both - HeatSum.of(guess)).estimated == ()
+    assert total((1, A), (1, X), (1, guess)).text == "x − 110 ± 40 (k = 2, estimated)"

@@ -63,9 +63,7 @@ def crowded() -> Ladder:
 def overlaid() -> Ladder:
     """Three routes of twelve steps on one axis."""
     source = random.Random(5)
-    return ladder(
-        *(chain(name, [float(source.randint(-90, 40)) for _ in range(12)]) for name in "ABC"), overlay=True
-    )
+    return ladder(*(chain(name, [float(source.randint(-90, 40)) for _ in range(12)]) for name in "ABC"), overlay=True)
 
 
 @pytest.fixture

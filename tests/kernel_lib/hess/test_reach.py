@@ -64,17 +64,13 @@ def test_a_phase_change_closes_the_gap():
 
 
 def test_two_phase_changes_are_asked_for_together():
-    error = refused(
-        "CH4(g) + H2O(l) -> CH4O(g) + H2(g)", row("K1", "CH4(g) + H2O(g) -> CH4O(l) + H2(g)", "10 kJ/mol")
-    )
+    error = refused("CH4(g) + H2O(l) -> CH4O(g) + H2(g)", row("K1", "CH4(g) + H2O(g) -> CH4O(l) + H2(g)", "10 kJ/mol"))
     assert error.missing[0].typed == ("vaporisation of H2O(l)", "vaporisation of CH4O(l)")
     assert error.missing[0].reaction == read_reaction("H2O(l) + CH4O(l) -> H2O(g) + CH4O(g)")
 
 
 def test_a_change_of_form_closes_the_gap():
-    error = refused(
-        "C(s, diamond) + O2(g) -> CO2(g)", row("K1", "C(s, graphite) + O2(g) -> CO2(g)", "-393.5 kJ/mol")
-    )
+    error = refused("C(s, diamond) + O2(g) -> CO2(g)", row("K1", "C(s, graphite) + O2(g) -> CO2(g)", "-393.5 kJ/mol"))
     assert error.missing[0].kind == "form"
     assert error.missing[0].reaction == read_reaction("C(s, diamond) -> C(s, graphite)")
 

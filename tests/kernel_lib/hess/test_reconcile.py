@@ -79,8 +79,10 @@ def direct(rows: Rows) -> tuple[Any, Any, float, int]:
 
 
 def numbers(found: Reconciled) -> tuple[Any, Any]:
-    return (np.array([found.fitted[label].value for label in found.labels]),
-            np.array([found.fitted[label].u for label in found.labels]))
+    return (
+        np.array([found.fitted[label].value for label in found.labels]),
+        np.array([found.fitted[label].u for label in found.labels]),
+    )
 
 
 @given(st.integers(0, 10**6), st.integers(2, 14), st.booleans())
@@ -148,8 +150,14 @@ def test_it_is_what_sampling_gives() -> None:
     labels = list(found.labels)
     weights = found.fitted
     own = np.array([float(rows[label].datum.u) for label in labels])  # type: ignore[union-attr,arg-type]
-    shared = np.array([float(dict(found.network.heats[label].terms[1:]).popitem()[1])
-                       if len(found.network.heats[label].terms) > 1 else 0.0 for label in labels])
+    shared = np.array(
+        [
+            float(dict(found.network.heats[label].terms[1:]).popitem()[1])
+            if len(found.network.heats[label].terms) > 1
+            else 0.0
+            for label in labels
+        ]
+    )
     errors = chance.normal(size=(20_000, len(labels))) * own + chance.normal(size=(20_000, 1)) * shared
     columns = {label: index for index, label in enumerate(labels)}
     matrix = np.zeros((len(labels), len(labels)))
@@ -237,8 +245,10 @@ def test_a_shared_calibration_cancels_where_both_ways_have_it() -> None:
     """Both rows carry the same 10 % error; the cycle only sees their own."""
     a, b = LETTERS[:2]
     calibrated = {"shared": '"calorimeter A" 10 % (k = 1)'}
-    rows = Rows([made(f"K{i}", {a: -1, b: 1}, Fraction(heat), Fraction(1), **calibrated)
-                 for i, heat in ((1, 100), (2, 100))], 1.0)
+    rows = Rows(
+        [made(f"K{i}", {a: -1, b: 1}, Fraction(heat), Fraction(1), **calibrated) for i, heat in ((1, 100), (2, 100))],
+        1.0,
+    )
     found = reconcile(rows)
     assert found.adjusted is not None
     assert found.cycles[0].u == pytest.approx(math.sqrt(2))
@@ -271,8 +281,10 @@ def test_a_row_outside_every_cycle_moves_with_the_calibration_it_shares() -> Non
 def test_rows_that_have_only_a_shared_error_and_disagree_contradict() -> None:
     a, b = LETTERS[:2]
     calibrated = {"shared": '"calorimeter A" 1 % (k = 1)'}
-    rows = Rows([made(f"K{i}", {a: -1, b: 1}, Fraction(heat), Fraction(0), **calibrated)
-                 for i, heat in ((1, 100), (2, 101))], 1.0)
+    rows = Rows(
+        [made(f"K{i}", {a: -1, b: 1}, Fraction(heat), Fraction(0), **calibrated) for i, heat in ((1, 100), (2, 101))],
+        1.0,
+    )
     assert reconcile(rows).contradicts
     same = Rows([made(f"K{i}", {a: -1, b: 1}, Fraction(100), Fraction(0), **calibrated) for i in (1, 2)], 1.0)
     found = reconcile(same)
@@ -438,8 +450,15 @@ def test_results_are_plain_data() -> None:
 
 def test_the_upper_tail_of_chi_square() -> None:
     """M. Abramowitz, I. A. Stegun, Handbook of Mathematical Functions, table 26.8 (from memory), to five digits."""
-    for chi2, dof, p in ((3.84146, 1, 0.05), (6.63490, 1, 0.01), (9.21034, 2, 0.01), (11.0705, 5, 0.05),
-                         (29.5883, 10, 0.001), (124.342, 100, 0.05), (67.3276, 100, 0.995)):
+    for chi2, dof, p in (
+        (3.84146, 1, 0.05),
+        (6.63490, 1, 0.01),
+        (9.21034, 2, 0.01),
+        (11.0705, 5, 0.05),
+        (29.5883, 10, 0.001),
+        (124.342, 100, 0.05),
+        (67.3276, 100, 0.995),
+    ):
         assert upper_tail(chi2, dof) == pytest.approx(p, rel=2e-5)
     assert upper_tail(0, 3) == 1
     assert upper_tail(math.inf, 3) == 0

@@ -52,11 +52,17 @@ def test_transitions_are_passed_one_after_another_with_sign_and_uncertainty() ->
 def test_there_and_back_is_where_it_was_with_the_same_data() -> None:
     capacities, transitions = water()
     start = HeatSum.of(Datum("R", value=Fraction(-286), u=Fraction(1)))
-    up = at_temperature(start, 400, of=rh.read_reaction("H2(g) + 1/2 O2(g) -> H2O(l)"), heat_capacities=capacities,
-                        transitions=transitions)
+    up = at_temperature(
+        start,
+        400,
+        of=rh.read_reaction("H2(g) + 1/2 O2(g) -> H2O(l)"),
+        heat_capacities=capacities,
+        transitions=transitions,
+    )
     assert up.heat is not None
-    down = at_temperature(up.heat, 298.15, of=up.reaction, start=400, heat_capacities=capacities,
-                          transitions=transitions)
+    down = at_temperature(
+        up.heat, 298.15, of=up.reaction, start=400, heat_capacities=capacities, transitions=transitions
+    )
     assert down.heat == start
     assert down.reaction.net == rh.read_reaction("H2(g) + 1/2 O2(g) -> H2O(l)").net
 
@@ -159,18 +165,22 @@ def test_a_step_starts_from_its_own_temperature() -> None:
 
 
 def test_a_combination_is_brought_row_by_row_and_what_cancels_needs_no_heat_capacity() -> None:
-    typed = ("known\n  [K1] formation of H2O(l) | dH -286 kJ/mol\n  [K2] vaporisation of H2O(l) | dH {}\n"
-             "target [T] H2(g) + 1/2 O2(g) -> H2O(g)")
+    typed = (
+        "known\n  [K1] formation of H2O(l) | dH -286 kJ/mol\n  [K2] vaporisation of H2O(l) | dH {}\n"
+        "target [T] H2(g) + 1/2 O2(g) -> H2O(g)"
+    )
     sheet = rh.read_sheet(typed.format("41 kJ/mol at 373.15 K"))
     capacities, _ = water()
-    found = at_temperature(rh.combine(sheet.targets["T"], sheet.known), 373.15, heat_capacities=capacities,
-                           transitions=())
+    found = at_temperature(
+        rh.combine(sheet.targets["T"], sheet.known), 373.15, heat_capacities=capacities, transitions=()
+    )
     assert found.heat is not None
     assert found.heat.value == pytest.approx(-286 + 41 + (75 - 29 - 15) * 0.075)
     at_25 = rh.read_sheet(typed.format("44 kJ/mol"))
     no_liquid = {species: cp for species, cp in capacities.items() if species.phase == "g"}
-    cancelled = at_temperature(rh.combine(at_25.targets["T"], at_25.known), 373.15, heat_capacities=no_liquid,
-                               transitions=())
+    cancelled = at_temperature(
+        rh.combine(at_25.targets["T"], at_25.known), 373.15, heat_capacities=no_liquid, transitions=()
+    )
     assert cancelled.heat is not None
 
 

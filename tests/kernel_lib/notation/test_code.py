@@ -14,6 +14,17 @@ UNIT = pint.get_application_registry()
 HYDROGENATION = "C6H5NO2(l) + 3 H2(g) -> C6H5NH2(l) + 2 H2O(l)"
 
 
+def test_a_heat_may_be_typed_with_another_key() -> None:
+    run = row("K1", "vaporisation of H2O(l)", "Q 0.44 kJ for 10 mmol of H2O(l)")
+    bomb = row("K2", "H2(g) + 1/2 O2(g) -> H2O(l)", "dU -282.1 kJ/mol")
+    assert run.datum is not None
+    assert run.datum.value == 44
+    assert bomb.heat is not None
+    assert bomb.heat.key == "dU"
+    with pytest.raises(SheetFaults):
+        row("K3", "vaporisation of H2O(l)", "like K1 ± 3")
+
+
 def test_a_row_in_code_is_the_row_of_a_sheet() -> None:
     sheet, _ = build_sheet('known\n  [K1] formation of NH3(g) | dH -45.94(18) kJ/mol | source "table"\n')
     assert row("K1", "formation of NH3(g)", "-45.94(18) kJ/mol", source="table") == sheet.known["K1"]

@@ -9,10 +9,7 @@ from routeheat.notation.faults import render, split_lines
 def test_line_number_text_caret_and_repair() -> None:
     fault = Fault("unknown key yeild", 2, 3, 5, "did you mean yield?")
     assert render("route A\n  yeild 9 %", [fault]) == (
-        "line 2, column 3: unknown key yeild\n"
-        "    2 |   yeild 9 %\n"
-        "      |   ^^^^^\n"
-        "  did you mean yield?"
+        "line 2, column 3: unknown key yeild\n    2 |   yeild 9 %\n      |   ^^^^^\n  did you mean yield?"
     )
 
 

@@ -114,10 +114,16 @@ def test_section_words(header: str) -> None:
         (f"known\n  {ROW}\nrout A makes H2O(l)\n", "unknown section rout", "did you mean route?"),
         (f"known\n  {ROW}\ntaget [T] H2(g) -> H2(l)\n", "unknown section taget", "did you mean target?"),
         (f"uncertanty k = 2\nknown\n  {ROW}\n", "unknown section uncertanty", "did you mean uncertainty?"),
-        (f"species\n  X  C2H6(g)\n  known\n    {ROW}\n", "known starts a section, and stands at the left margin",
-         "delete the blanks before it"),
-        (f"known\n  {ROW}\n  route A makes H2O(l)\n", "route starts a section, and stands at the left margin",
-         "delete the blanks before it"),
+        (
+            f"species\n  X  C2H6(g)\n  known\n    {ROW}\n",
+            "known starts a section, and stands at the left margin",
+            "delete the blanks before it",
+        ),
+        (
+            f"known\n  {ROW}\n  route A makes H2O(l)\n",
+            "route starts a section, and stands at the left margin",
+            "delete the blanks before it",
+        ),
         ("hello\n", "this line stands before any section", "start with species, known, target or route"),
     ],
 )

@@ -26,6 +26,11 @@ def test_what_is_unknown_stands_in_words_where_a_number_would() -> None:
     assert content.rows[1] == (2.0, "not stated", "uncertainty not stated")
 
 
+def test_an_estimate_says_so_in_the_remark() -> None:
+    content = flat(_column(Reading(-5.0, 20.0, estimated=True), Reading(-5.0, None, estimated=True)))
+    assert [row[2] for row in content.rows] == ["standard uncertainty, estimated", "uncertainty not stated, estimated"]
+
+
 def test_fractions_are_text_and_whole_numbers_are_numbers() -> None:
     assert flat(_column(Fraction(-3, 2), Fraction(4), 7)).rows == (("-3/2",), (4,), (7,))
 

@@ -64,3 +64,8 @@ def test_a_figure_is_an_image_that_holds_its_bytes(alt: str) -> None:
     assert match is not None
     assert match[1] == escape(alt)
     assert base64.b64decode(match[2]).decode() == svg
+
+
+def test_a_title_may_have_subscripts_and_is_escaped() -> None:
+    table = Table((Run("<b>CO"), Run("2", "sub")), (Column("a", "a"),), (("x",),))
+    assert "<caption>&lt;b&gt;CO<sub>2</sub></caption>" in render_table(table)

@@ -116,3 +116,8 @@ def test_with_unit(unit: str, shown: str) -> None:
 
 def test_a_table_without_rows_shows_its_header() -> None:
     assert render_table(Table("Empty", (TEXT,), ())) == "Empty\nname\n────"
+
+
+def test_a_title_with_subscripts_is_written_plain() -> None:
+    table = Table((Run("CO"), Run("2", "sub")), (Column("a", "a"),), (("x",),))
+    assert render_table(table).startswith("CO2\n")

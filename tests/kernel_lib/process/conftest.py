@@ -97,16 +97,37 @@ def step(
     return replace(made, **more)  # type: ignore[arg-type]
 
 
-def route(name: str, makes: str, *steps: Step, declared: dict[str, str] | None = None, known: Iterable[Row] = (),
-          k: float = 1.0) -> Route:
+def route(
+    name: str,
+    makes: str,
+    *steps: Step,
+    declared: dict[str, str] | None = None,
+    known: Iterable[Row] = (),
+    k: float = 1.0,
+) -> Route:
     """A route at k = 1."""
     return Route(name, "", species(makes, declared), steps, known=Rows(known, k), k=k)
 
 
-S2 = {"AR": "C8H9FO", "NIT": "C8H8FNO3", "AMI": "C8H10FNO", "BRO": "C8H8BrFO", "ACL": "C9H8ClFO2",
-      "AZI": "C9H8FN3O2", "NCO": "C9H8FNO2"}
-S3 = {"EST": "C12H16O3", "ACI": "C11H14O3", "ACL": "C11H13ClO2", "NIT": "C10H10N2O4", "AMI": "C10H12N2O2",
-      "AMD": "C21H24N2O4", "CDI": "C7H6N4O", "IMI": "C3H4N2"}
+S2 = {
+    "AR": "C8H9FO",
+    "NIT": "C8H8FNO3",
+    "AMI": "C8H10FNO",
+    "BRO": "C8H8BrFO",
+    "ACL": "C9H8ClFO2",
+    "AZI": "C9H8FN3O2",
+    "NCO": "C9H8FNO2",
+}
+S3 = {
+    "EST": "C12H16O3",
+    "ACI": "C11H14O3",
+    "ACL": "C11H13ClO2",
+    "NIT": "C10H10N2O4",
+    "AMI": "C10H12N2O2",
+    "AMD": "C21H24N2O4",
+    "CDI": "C7H6N4O",
+    "IMI": "C3H4N2",
+}
 
 
 @pytest.fixture
@@ -114,21 +135,40 @@ def amine_routes() -> dict[str, Route]:
     """Three invented routes to one amine; all compounds and values are invented."""
     d = S2
     a = route(
-        "A", "AMI(s)",
-        step("A1", "AR(l) + HNO3(aq) -> NIT(s) + H2O(l)", "-135 ± 8", "88 %", declared=d, conc="1.6", cp="1.75",
-             at="20 degC"),
-        step("A2", "NIT(s) + 3 H2(g) -> AMI(s) + 2 H2O(l)", "-545 ± 20", "94 %", declared=d, conc="0.9", cp="2.3",
-             at="60 degC"),
+        "A",
+        "AMI(s)",
+        step(
+            "A1",
+            "AR(l) + HNO3(aq) -> NIT(s) + H2O(l)",
+            "-135 ± 8",
+            "88 %",
+            declared=d,
+            conc="1.6",
+            cp="1.75",
+            at="20 degC",
+        ),
+        step(
+            "A2",
+            "NIT(s) + 3 H2(g) -> AMI(s) + 2 H2O(l)",
+            "-545 ± 20",
+            "94 %",
+            declared=d,
+            conc="0.9",
+            cp="2.3",
+            at="60 degC",
+        ),
         declared=d,
     )
     b = route(
-        "B", "AMI(s)",
+        "B",
+        "AMI(s)",
         step("B1", "AR(l) + Br2(l) -> BRO(l) + HBr(g)", "-70 ± 10", "82 %", declared=d),
         step("B2", "BRO(l) + 2 NH3(aq) -> AMI(s) + NH4Br(aq)", "-75 ± 15", "78 %", declared=d),
         declared=d,
     )
     c = route(
-        "C", "AMI(s)",
+        "C",
+        "AMI(s)",
         step("C1", "ACL(l) + NaN3(aq) -> AZI(sln) + NaCl(aq)", "-60 ± 15", "90 %", declared=d),
         step("C2", "AZI(sln) -> NCO(sln) + N2(g)", "-150 ± 20", "85 %", declared=d),
         step("C3", "NCO(sln) + H2O(l) -> AMI(s) + CO2(g)", "-95 ± 15", "92 %", declared=d),
@@ -143,15 +183,42 @@ def amide_steps(rename: Callable[[str], str] = lambda label: label) -> dict[str,
     return {
         "X1": step(rename("X1"), "EST(l) + H2O(l) -> ACI(s) + CH4O(l)", "-55 ± 3", "93 %", declared=d),
         "X2": step(rename("X2"), "ACI(s) + SOCl2(l) -> ACL(l) + SO2(g) + HCl(g)", "12 ± 8", "97 %", declared=d),
-        "X2q": step(rename("X2q"), "SOCl2(l) + H2O(l) -> SO2(g) + 2 HCl(aq)", "-95 ± 10", declared=d,
-                    side=rename("X2"), amount="0.3"),
+        "X2q": step(
+            rename("X2q"),
+            "SOCl2(l) + H2O(l) -> SO2(g) + 2 HCl(aq)",
+            "-95 ± 10",
+            declared=d,
+            side=rename("X2"),
+            amount="0.3",
+        ),
         "Y1": step(rename("Y1"), "NIT(s) + 3 H2(g) -> AMI(s) + 2 H2O(l)", "-548 ± 15", "91 %", declared=d),
-        "C": step(rename("C"), "ACL(l) + AMI(s) + C6H15N(l) -> AMD(sln) + C6H16NCl(s)", "-140 ± 8", "89 %",
-                  declared=d, limiting="AMI(s)", equiv={"ACL(l)": "1.05"}),
-        "C2": step(rename("C2"), "ACI(s) + AMI(s) + CDI(s) -> AMD(sln) + CO2(g) + 2 IMI(s)", "-85 ± 10", "84 %",
-                   declared=d, limiting="ACI(s)", equiv={"AMI(s)": "1.05"}),
-        "F": step(rename("F"), "AMD(sln) -> AMD(s)", "-25 ± 5", "94 %", declared=d, operation="crystallisation",
-                  loss="reacted"),
+        "C": step(
+            rename("C"),
+            "ACL(l) + AMI(s) + C6H15N(l) -> AMD(sln) + C6H16NCl(s)",
+            "-140 ± 8",
+            "89 %",
+            declared=d,
+            limiting="AMI(s)",
+            equiv={"ACL(l)": "1.05"},
+        ),
+        "C2": step(
+            rename("C2"),
+            "ACI(s) + AMI(s) + CDI(s) -> AMD(sln) + CO2(g) + 2 IMI(s)",
+            "-85 ± 10",
+            "84 %",
+            declared=d,
+            limiting="ACI(s)",
+            equiv={"AMI(s)": "1.05"},
+        ),
+        "F": step(
+            rename("F"),
+            "AMD(sln) -> AMD(s)",
+            "-25 ± 5",
+            "94 %",
+            declared=d,
+            operation="crystallisation",
+            loss="reacted",
+        ),
     }
 
 
@@ -175,6 +242,15 @@ def amide_routes() -> dict[str, Route]:
 def code() -> SimpleNamespace:
     """The writers above, for test modules that cannot import this file."""
     return SimpleNamespace(
-        species=species, measured=measured, row=row, step=step, route=route, reaction=reaction,
-        amide_route=amide_route, amide_steps=amide_steps, first=ACID_CHLORIDE, second=IMIDAZOLIDE, amide=S3,
+        species=species,
+        measured=measured,
+        row=row,
+        step=step,
+        route=route,
+        reaction=reaction,
+        amide_route=amide_route,
+        amide_steps=amide_steps,
+        first=ACID_CHLORIDE,
+        second=IMIDAZOLIDE,
+        amide=S3,
     )

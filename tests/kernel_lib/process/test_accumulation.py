@@ -104,17 +104,18 @@ def test_batch_is_one_without_a_notice(code: SimpleNamespace, plain: Step) -> No
     assert (found.fraction.value, found.notices, found.faults) == (1.0, (), ())
 
 
-@pytest.mark.parametrize(("keys", "words"), [
-    ({"batch": True, "Xac": "0.5"}, "Xac is 1"),
-    ({"Xac": "1.2", "feed": "1 h"}, "between 0 and 1"),
-    ({"Xac": "-0.1", "feed": "1 h"}, "between 0 and 1"),
-    ({"Xac": "0.5", "feed": "0 h"}, "feed time"),
-    ({"Xac": "0.5", "feed": "1 h", "fedpart": "100 %"}, "fedpart"),
-    ({"rate1": "0 h^-1", "feed": "1 h"}, "rate1 is not positive"),
-])
-def test_impossible_inputs_are_faults(
-    code: SimpleNamespace, plain: Step, keys: dict[str, object], words: str
-) -> None:
+@pytest.mark.parametrize(
+    ("keys", "words"),
+    [
+        ({"batch": True, "Xac": "0.5"}, "Xac is 1"),
+        ({"Xac": "1.2", "feed": "1 h"}, "between 0 and 1"),
+        ({"Xac": "-0.1", "feed": "1 h"}, "between 0 and 1"),
+        ({"Xac": "0.5", "feed": "0 h"}, "feed time"),
+        ({"Xac": "0.5", "feed": "1 h", "fedpart": "100 %"}, "fedpart"),
+        ({"rate1": "0 h^-1", "feed": "1 h"}, "rate1 is not positive"),
+    ],
+)
+def test_impossible_inputs_are_faults(code: SimpleNamespace, plain: Step, keys: dict[str, object], words: str) -> None:
     found = read(code, plain, **keys)
     assert words in found.faults[0]
     assert found.fraction.value == 1.0
@@ -144,8 +145,9 @@ def test_second_order_needs_to_know_what_is_fed(code: SimpleNamespace, plain: St
 
 def test_second_order_with_a_fed_limiting_reactant_equals_its_mirror(code: SimpleNamespace) -> None:
     """Feeding the limiting reactant into 1.25 equivalents: never more than all of it is fed, and none is in excess."""
-    step = code.step("S", "C2H4(g) + H2(g) -> C2H6(g)", "-100", conc="1", cp="2", equiv={"H2(g)": "1.25"},
-                     limiting="C2H4(g)")
+    step = code.step(
+        "S", "C2H4(g) + H2(g) -> C2H6(g)", "-100", conc="1", cp="2", equiv={"H2(g)": "1.25"}, limiting="C2H4(g)"
+    )
     found = read(code, step, rate2="2 kg/(mol h)", feed="4 h", fed=code.species("C2H4(g)"))
     mirrored = worst_second_order(2 * 1.25 * 4, 0.8)
     assert found.fraction.value == pytest.approx(mirrored.fraction, rel=1e-9)

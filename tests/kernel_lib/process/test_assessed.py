@@ -38,11 +38,14 @@ def test_uncertainty_of_a_temperature_is_a_difference() -> None:
     assert (found.value, found.u) == (pytest.approx(26.85), 2.0)
 
 
-@pytest.mark.parametrize(("refusal", "text"), [
-    (NotAssessed("not classifiable", ("TD24",)), "not classifiable: TD24 missing"),
-    (NotAssessed("no TD24", ("TD24",), "autocatalytic"), "no TD24: TD24 missing; autocatalytic"),
-    (NotAssessed("none", reason="endothermic"), "none: endothermic"),
-])
+@pytest.mark.parametrize(
+    ("refusal", "text"),
+    [
+        (NotAssessed("not classifiable", ("TD24",)), "not classifiable: TD24 missing"),
+        (NotAssessed("no TD24", ("TD24",), "autocatalytic"), "no TD24: TD24 missing; autocatalytic"),
+        (NotAssessed("none", reason="endothermic"), "none: endothermic"),
+    ],
+)
 def test_refusals_say_why(refusal: NotAssessed, text: str) -> None:
     assert str(refusal) == text
     assert refusal.to_dict()["not_assessed"] == text

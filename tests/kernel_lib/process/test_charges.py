@@ -39,12 +39,20 @@ def test_nil_states_that_there_is_nothing_else(nitration: Step) -> None:
     assert found.concentration == pytest.approx(1 / (0.078114 + 1.1 * 0.063012), rel=1e-4)
 
 
-@pytest.mark.parametrize(("text", "mass"), [
-    ("toluene 5 L/kg density 0.867 kg/L", 0.078114 * 5 * 0.867), ("toluene 5 vol density 867 kg/m3", 0.078114 * 4.335),
-    ("toluene 5 mL/g density 0.867 g/mL", 0.078114 * 4.335), ("toluene 2 kg/kg", 0.156228), ("toluene 2 g/g", 0.156228),
-    ("toluene 0.05 mol/mol M 92.14 g/mol", 0.05 * 0.09214), ("toluene 0.05 eq M 92.14 g/mol", 0.05 * 0.09214),
-    ("H2SO4 0.05 mol/mol", 0.05 * 0.098072), ("N,N-dimethylformamide 2 kg/kg", 0.156228),
-])
+@pytest.mark.parametrize(
+    ("text", "mass"),
+    [
+        ("toluene 5 L/kg density 0.867 kg/L", 0.078114 * 5 * 0.867),
+        ("toluene 5 vol density 867 kg/m3", 0.078114 * 4.335),
+        ("toluene 5 mL/g density 0.867 g/mL", 0.078114 * 4.335),
+        ("toluene 2 kg/kg", 0.156228),
+        ("toluene 2 g/g", 0.156228),
+        ("toluene 0.05 mol/mol M 92.14 g/mol", 0.05 * 0.09214),
+        ("toluene 0.05 eq M 92.14 g/mol", 0.05 * 0.09214),
+        ("H2SO4 0.05 mol/mol", 0.05 * 0.098072),
+        ("N,N-dimethylformamide 2 kg/kg", 0.156228),
+    ],
+)
 def test_amounts(nitration: Step, text: str, mass: float) -> None:
     found = read(nitration, text)
     assert found.missing == ()
@@ -74,10 +82,14 @@ def test_weight_per_cent_of_the_whole(nitration: Step) -> None:
     assert masses(found)["catalyst"] == pytest.approx(0.02 * (found.total or 0.0))
 
 
-@pytest.mark.parametrize(("text", "why"), [
-    ("toluene 5 L/kg", "volumes need a density"), ("toluene 0.5 mol/mol", "molar mass not known"),
-    ("toluene 3 kg", "the mass of the limiting reactant or a size"),
-])
+@pytest.mark.parametrize(
+    ("text", "why"),
+    [
+        ("toluene 5 L/kg", "volumes need a density"),
+        ("toluene 0.5 mol/mol", "molar mass not known"),
+        ("toluene 3 kg", "the mass of the limiting reactant or a size"),
+    ],
+)
 def test_missing_masses_say_what_is_missing(nitration: Step, text: str, why: str) -> None:
     found = read(nitration, text)
     assert why in found.missing[0]
@@ -88,12 +100,20 @@ def test_per_cent_beside_a_missing_mass(nitration: Step) -> None:
     assert len(read(nitration, "toluene 5 L/kg, catalyst 2 %").missing) == 2
 
 
-@pytest.mark.parametrize(("text", "words"), [
-    ("toluene", "has no amount"), ("toluene 5 furlongs", "unknown unit"), ("toluene 5", "is no amount"),
-    ("toluene 5 h", "is no amount"), ("toluene 5 L/kg density heavy", "a number belongs behind density"),
-    ("toluene 5 L/kg density 3 h", "cannot be expressed"), ("HNO3(aq) 1.2 mol/mol as 0 %", "a strength lies"),
-    ("HNO3(aq) 0.9 mol/mol", "less HNO3(aq) than the reaction needs"), ("a 60 %, b 40 %", "leave nothing for the rest"),
-])
+@pytest.mark.parametrize(
+    ("text", "words"),
+    [
+        ("toluene", "has no amount"),
+        ("toluene 5 furlongs", "unknown unit"),
+        ("toluene 5", "is no amount"),
+        ("toluene 5 h", "is no amount"),
+        ("toluene 5 L/kg density heavy", "a number belongs behind density"),
+        ("toluene 5 L/kg density 3 h", "cannot be expressed"),
+        ("HNO3(aq) 1.2 mol/mol as 0 %", "a strength lies"),
+        ("HNO3(aq) 0.9 mol/mol", "less HNO3(aq) than the reaction needs"),
+        ("a 60 %, b 40 %", "leave nothing for the rest"),
+    ],
+)
 def test_faults(nitration: Step, text: str, words: str) -> None:
     with pytest.raises(RouteError) as caught:
         read(nitration, text)

@@ -24,10 +24,24 @@ degrees = st.integers(-20, 300).map(float)
 spreads = st.sampled_from([0.0, 0.5, 3.0, 15.0])
 
 
-@pytest.mark.parametrize(("order", "expected"), [
-    ("T<M<D", 1), ("T<D<M", 2), ("T<D=M", 2), ("M<T<D", 3), ("T=M<D", 3), ("M<D<T", 4), ("M<D=T", 4), ("D<T<M", 5),
-    ("D<M<T", 5), ("D=T<M", 5), ("D<T=M", 5), ("D=M<T", 5), ("D=M=T", 5),
-])
+@pytest.mark.parametrize(
+    ("order", "expected"),
+    [
+        ("T<M<D", 1),
+        ("T<D<M", 2),
+        ("T<D=M", 2),
+        ("M<T<D", 3),
+        ("T=M<D", 3),
+        ("M<D<T", 4),
+        ("M<D=T", 4),
+        ("D<T<M", 5),
+        ("D<M<T", 5),
+        ("D=T<M", 5),
+        ("D<T=M", 5),
+        ("D=M<T", 5),
+        ("D=M=T", 5),
+    ],
+)
 def test_every_ordering_has_its_class(order: str, expected: int) -> None:
     """All thirteen weak orderings of three temperatures; ties go to the worse class."""
     place, value = 0.0, {}
@@ -76,8 +90,9 @@ def test_missing_mtt_gives_every_class_some_mtt_gives(t: float, r: float, m: flo
         assert set(known) <= set(unknown)
 
 
-@pytest.mark.parametrize(("process", "mtsr", "mtt", "words"), [(120, 130, 110, "T is above MTT"),
-                                                              (60, 50, 110, "MTSR is below T")])
+@pytest.mark.parametrize(
+    ("process", "mtsr", "mtt", "words"), [(120, 130, 110, "T is above MTT"), (60, 50, 110, "MTSR is below T")]
+)
 def test_contradictions_are_refused(process: float, mtsr: float, mtt: float, words: str) -> None:
     found = classify(process, mtsr, mtt, 150)
     assert isinstance(found, NotAssessed)

@@ -41,14 +41,18 @@ def test_which_route_releases_more(amine_routes: dict[str, Route]) -> None:
     found = compare_routes(amine_routes)
     assert [(d.first, d.second) for d in found.differences] == [("A", "B"), ("A", "C"), ("B", "C")]
     assert found.difference("A", "B").verdict == (
-        "A releases more heat than B by 537 ± 34 (k = 1) kJ/mol (yield uncertainty not included)")
+        "A releases more heat than B by 537 ± 34 (k = 1) kJ/mol (yield uncertainty not included)"
+    )
     assert found.difference("B", "C").verdict.startswith("C releases more heat than B by 175 ± 45 (k = 1) kJ/mol")
 
 
-@pytest.mark.parametrize(("heat", "verdict"), [
-    ("-13.9 ± 1", "not distinguishable"),
-    ("-14 ± 1", "B releases more heat than A by 4.0 ± 2.0 (k = 1) kJ/mol"),
-])
+@pytest.mark.parametrize(
+    ("heat", "verdict"),
+    [
+        ("-13.9 ± 1", "not distinguishable"),
+        ("-14 ± 1", "B releases more heat than A by 4.0 ± 2.0 (k = 1) kJ/mol"),
+    ],
+)
 def test_the_limit_is_twice_the_standard_uncertainty(code: SimpleNamespace, heat: str, verdict: str) -> None:
     # u of the difference: √(1² + 1.7320508…²), just below 2
     a = code.route("A", "P", code.step("S1", "A -> P", "-10 ± 1.73205", "100 ± 0 %"))

@@ -21,8 +21,11 @@ TYPED = {"Xac": "0.30", "feed": "1.5 h", "MTT": "130 degC", "TD24": "95 degC"}
 def made(code: SimpleNamespace, heat: str = "-135", **keys: object) -> Step:
     step = code.step("A1", "C6H6(l) + HNO3(aq) -> C6H5NO2(l) + H2O(l)", heat, conc="1.6", cp="1.75", at="20 degC")
     settings = {**TYPED, **keys}
-    read = tuple((key, code.measured(item) if isinstance(item, str) and item[:1] in "0123456789-" else item)
-                 for key, item in settings.items() if item is not None)
+    read = tuple(
+        (key, code.measured(item) if isinstance(item, str) and item[:1] in "0123456789-" else item)
+        for key, item in settings.items()
+        if item is not None
+    )
     return replace(step, row=replace(step.row, settings=read))
 
 
@@ -90,11 +93,15 @@ def test_ambient_from_the_sheet(code: SimpleNamespace) -> None:
     assert criticality(made(code, ambient="96 degC")).as_run.words == "class 5"
 
 
-@pytest.mark.parametrize(("keys", "words"), [
-    ({"MTT": "10 degC"}, "T is above MTT"), ({"MTSR": "10 degC"}, "MTSR is below T"),
-    ({"Xac": "1.5"}, "between 0 and 1"),
-    ({"batch": True}, "batch and feed"),
-])
+@pytest.mark.parametrize(
+    ("keys", "words"),
+    [
+        ({"MTT": "10 degC"}, "T is above MTT"),
+        ({"MTSR": "10 degC"}, "MTSR is below T"),
+        ({"Xac": "1.5"}, "between 0 and 1"),
+        ({"batch": True}, "batch and feed"),
+    ],
+)
 def test_inconsistent_input_is_no_class(code: SimpleNamespace, keys: dict[str, object], words: str) -> None:
     found = criticality(made(code, **keys)).as_run
     assert isinstance(found.at_values, NotAssessed)

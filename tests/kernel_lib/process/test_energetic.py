@@ -53,17 +53,34 @@ def test_more_oxygen_never_lowers_the_balance(c: int, h: int, o: int) -> None:
     assert two.per_cent > one.per_cent
 
 
-@pytest.mark.parametrize(("value", "word"), [
-    (-241, "low"), (-240, "medium"), (-121, "medium"), (-120, "high"), (0, "high"), (80, "high"), (81, "medium"),
-    (160, "medium"), (161, "low"),
-])
+@pytest.mark.parametrize(
+    ("value", "word"),
+    [
+        (-241, "low"),
+        (-240, "medium"),
+        (-121, "medium"),
+        (-120, "high"),
+        (0, "high"),
+        (80, "high"),
+        (81, "medium"),
+        (160, "medium"),
+        (161, "low"),
+    ],
+)
 def test_bands_with_ties_to_the_worse_side(value: float, word: str) -> None:
     assert energetic.band(value) == word
 
 
-@pytest.mark.parametrize(("ratio", "words"), [
-    (3.1, "20 g"), (3.0, "5 g"), (1.1, "5 g"), (1.0, "never isolate"), (0.5, "never isolate"),
-])
+@pytest.mark.parametrize(
+    ("ratio", "words"),
+    [
+        (3.1, "20 g"),
+        (3.0, "5 g"),
+        (1.1, "5 g"),
+        (1.0, "never isolate"),
+        (0.5, "never isolate"),
+    ],
+)
 def test_tiers_of_azides_with_ties_to_the_stricter_one(ratio: float, words: str) -> None:
     assert words in energetic.azide_limit(ratio)
 
@@ -76,9 +93,17 @@ def test_six_carbons_per_group() -> None:
     assert energetic.six_per_group(read_formula("C7H5N3O6"), 3) == pytest.approx(7 / 3)
 
 
-@pytest.mark.parametrize(("oxygen", "peroxide", "met"), [
-    (1.0, 1.0, True), (1.1, 1.0, False), (0.5, 1.1, True), (0.6, 1.1, False), (0.5, 7.1, False), (0.5, 7.0, True),
-])
+@pytest.mark.parametrize(
+    ("oxygen", "peroxide", "met"),
+    [
+        (1.0, 1.0, True),
+        (1.1, 1.0, False),
+        (0.5, 1.1, True),
+        (0.6, 1.1, False),
+        (0.5, 7.1, False),
+        (0.5, 7.0, True),
+    ],
+)
 def test_peroxide_waiver(oxygen: float, peroxide: float, met: bool) -> None:
     assert energetic.peroxide_waiver(oxygen, peroxide) is met
 

@@ -21,8 +21,13 @@ from routeheat.units import read_unit
 
 
 def test_a_linear_route(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B", "-80", "90 %"), code.step("S2", "B -> D", "-150", "80 %"),
-                      code.step("S3", "D -> P", "-45", "75 %"))
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B", "-80", "90 %"),
+        code.step("S2", "B -> D", "-150", "80 %"),
+        code.step("S3", "D -> P", "-45", "75 %"),
+    )
     found = extents(made)
     assert [round(float(found[s.label]), 4) for s in made.steps] == [1.8519, 1.6667, 1.3333]
     assert found["S1"] == 1 / (Fraction("0.9") * Fraction("0.8") * Fraction("0.75"))
@@ -30,8 +35,10 @@ def test_a_linear_route(code: SimpleNamespace) -> None:
 
 @pytest.mark.parametrize(
     ("name", "expected"),
-    [("1", {"X1": 1.3913, "X2": 1.2939, "X2q": 0.3882, "Y1": 1.3135, "C": 1.1953, "F": 1.0638}),
-     ("2", {"X1": 1.3618, "Y1": 1.4613, "C2": 1.2665, "F": 1.0638})],
+    [
+        ("1", {"X1": 1.3913, "X2": 1.2939, "X2q": 0.3882, "Y1": 1.3135, "C": 1.1953, "F": 1.0638}),
+        ("2", {"X1": 1.3618, "Y1": 1.4613, "C2": 1.2665, "F": 1.0638}),
+    ],
 )
 def test_convergent_routes_with_excess(amide_routes: dict[str, Route], name: str, expected: dict[str, float]) -> None:
     found = extents(amide_routes[name])
@@ -42,7 +49,8 @@ def nitric_acid(code: SimpleNamespace, part: str = "") -> Route:
     # OpenStax, Chemistry 2e (2019), sec. 5.3: the Ostwald process per mole of HNO3
     recycle = [("NO(g)", "S3", part)] if part else []
     return code.route(
-        "N", "HNO3(aq)",
+        "N",
+        "HNO3(aq)",
         code.step("S1", "4 NH3(g) + 5 O2(g) -> 4 NO(g) + 6 H2O(g)", "-907"),
         code.step("S2", "2 NO(g) + O2(g) -> 2 NO2(g)", "-113", recycle=recycle),
         code.step("S3", "3 NO2(g) + H2O(l) -> 2 HNO3(aq) + NO(g)", "-139"),
@@ -59,20 +67,36 @@ def test_a_recycle_from_a_later_step_takes_load_off_the_first(code: SimpleNamesp
 
 
 def test_a_diamond_adds_up_both_branches(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B", "", "50 %"), code.step("S2", "B -> D"),
-                      code.step("S3", "2 B -> E"), code.step("S4", "D + E -> P", limiting="D"))
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B", "", "50 %"),
+        code.step("S2", "B -> D"),
+        code.step("S3", "2 B -> E"),
+        code.step("S4", "D + E -> P", limiting="D"),
+    )
     assert extents(made)["S1"] == 6
 
 
 def test_a_product_used_twice(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B", "", "80 %"), code.step("S2", "B + K -> D", "", "50 %"),
-                      code.step("S3", "D + B -> P", limiting="D"))
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B", "", "80 %"),
+        code.step("S2", "B + K -> D", "", "50 %"),
+        code.step("S3", "D + B -> P", limiting="D"),
+    )
     assert extents(made)["S1"] == (2 + 1) / Fraction("0.8")
 
 
 def test_equivalents_of_an_intermediate_scale_only_its_makers(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B"), code.step("S2", "K -> D"),
-                      code.step("S3", "B + D -> P", limiting="B", equiv={"D": "1.2"}))
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B"),
+        code.step("S2", "K -> D"),
+        code.step("S3", "B + D -> P", limiting="B", equiv={"D": "1.2"}),
+    )
     assert extents(made).values == {"S1": 1, "S2": Fraction(6, 5), "S3": 1}
 
 
@@ -82,8 +106,9 @@ def test_equivalents_of_a_bought_reagent_scale_nothing(code: SimpleNamespace) ->
 
 
 def test_a_side_row_follows_the_limiting_reactant_of_its_parent(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "2 A -> P", "", "50 %"),
-                      code.step("Q", "K -> N", side="S1", amount="0.25"))
+    made = code.route(
+        "R", "P", code.step("S1", "2 A -> P", "", "50 %"), code.step("Q", "K -> N", side="S1", amount="0.25")
+    )
     assert extents(made)["Q"] == 1  # 4 mol of A charged
 
 
@@ -104,13 +129,18 @@ def _loop(y: Fraction, r: Fraction) -> Route:
     a, b, p = (Species(name, declared=True) for name in "ABP")
     one = Fraction(1)
     first = Step(Row("S1", Reaction(((one, a),), ((one, b),))))
-    second = Step(Row("S2", Reaction(((one, b),), ((one, p),))), yield_=Measured(y, pure), loss="unreacted",
-                  recycles=(Recycle(b, "S2", Measured(r, pure)),) if r * (1 - y) else ())
+    second = Step(
+        Row("S2", Reaction(((one, b),), ((one, p),))),
+        yield_=Measured(y, pure),
+        loss="unreacted",
+        recycles=(Recycle(b, "S2", Measured(r, pure)),) if r * (1 - y) else (),
+    )
     return Route("R", "", p, (first, second))
 
 
 def _with(route: Route, label: str, change: Fraction, recycle: bool) -> Route:
     """The route with a yield or a recycled part moved by ``change``."""
+
     def moved(step: Step) -> Step:
         if step.label != label:
             return step
@@ -130,7 +160,8 @@ def _plus(value: Measured, change: Fraction) -> Measured:
 @pytest.mark.parametrize("loss", ["reacted", "unreacted"])
 def test_derivatives_agree_with_central_differences(code: SimpleNamespace, loss: str) -> None:
     made = code.route(
-        "R", "P",
+        "R",
+        "P",
         code.step("S1", "A -> B", "-10", "90 %"),
         code.step("S2", "2 B + M -> D", "-20", "80 %", recycle=[("B", "S3", "60 %")]),
         code.step("S3", "D + K -> P + B", "-30", "70 %", loss=loss),
@@ -139,7 +170,11 @@ def test_derivatives_agree_with_central_differences(code: SimpleNamespace, loss:
     h = Fraction(1, 10**6)
     found = extents(made)
     assert [datum.name for datum, _ in found.sensitivities] == [
-        "yield of S1", "yield of S2", "recycle of S2", "yield of S3"]
+        "yield of S1",
+        "yield of S2",
+        "recycle of S2",
+        "yield of S3",
+    ]
     for datum, derivative in found.sensitivities:
         recycle = datum.what == "recycle"
         up, down = (extents(_with(made, datum.label, step, recycle)) for step in (h, -h))
@@ -158,5 +193,10 @@ def test_the_net_equation_has_no_intermediates(code: SimpleNamespace) -> None:
     # OpenStax, Chemistry 2e (2019), sec. 5.3: 3/2 NH3 + 21/8 O2 -> HNO3 + 1/2 NO + 7/4 H2O (its two phases apart)
     net = net_equation(extents(nitric_acid(code, "100 %")).links)
     assert {species.text: nu for species, nu in net.net.items()} == {
-        "NH3(g)": Fraction(-3, 2), "O2(g)": Fraction(-21, 8), "H2O(g)": Fraction(9, 4), "H2O(l)": Fraction(-1, 2),
-        "HNO3(aq)": 1, "NO(g)": Fraction(1, 2)}
+        "NH3(g)": Fraction(-3, 2),
+        "O2(g)": Fraction(-21, 8),
+        "H2O(g)": Fraction(9, 4),
+        "H2O(l)": Fraction(-1, 2),
+        "HNO3(aq)": 1,
+        "NO(g)": Fraction(1, 2),
+    }

@@ -12,11 +12,20 @@ from routeheat.process.groups import groups, groups_of_structure, read_groups
 
 HAS_STRUCTURES = find_spec("rdkit") is not None
 STRUCTURES = [
-    ("CC(=O)N=[N+]=[N-]", {"azide": 1}), ("Cc1ccc(S(=O)(=O)N=[N+]=[N-])cc1", {"sulfonyl azide": 1}),
-    ("c1ccccc1[N+](=O)[O-]", {"nitroarene": 1}), ("C[N+](=O)[O-]", {"nitroalkane": 1}),
-    ("CCO[N+](=O)[O-]", {"nitrate ester": 1}), ("O=NC1CCCCC1", {"nitroso": 1}), ("[O-][n+]1ccccc1", {"N-oxide": 1}),
-    ("CN=NC", {"azo": 1}), ("CCOC(=O)C=[N+]=[N-]", {"diazo": 1}), ("c1ccccc1[N+]#N", {"diazonium": 1}),
-    ("CC(C)(C)OO", {"peroxide": 1}), ("C1CO1", {"epoxide": 1}), ("CC(C)=NO", {"oxime": 1}), ("c1ccccc1", {}),
+    ("CC(=O)N=[N+]=[N-]", {"azide": 1}),
+    ("Cc1ccc(S(=O)(=O)N=[N+]=[N-])cc1", {"sulfonyl azide": 1}),
+    ("c1ccccc1[N+](=O)[O-]", {"nitroarene": 1}),
+    ("C[N+](=O)[O-]", {"nitroalkane": 1}),
+    ("CCO[N+](=O)[O-]", {"nitrate ester": 1}),
+    ("O=NC1CCCCC1", {"nitroso": 1}),
+    ("[O-][n+]1ccccc1", {"N-oxide": 1}),
+    ("CN=NC", {"azo": 1}),
+    ("CCOC(=O)C=[N+]=[N-]", {"diazo": 1}),
+    ("c1ccccc1[N+]#N", {"diazonium": 1}),
+    ("CC(C)(C)OO", {"peroxide": 1}),
+    ("C1CO1", {"epoxide": 1}),
+    ("CC(C)=NO", {"oxime": 1}),
+    ("c1ccccc1", {}),
 ]
 
 
@@ -33,10 +42,17 @@ def test_no_spelling_means_two_groups() -> None:
     assert len(words) == len(set(words))
 
 
-@pytest.mark.parametrize(("text", "expected"), [
-    ("azide", {"azide": 1}), ("2 nitroarene, epoxide", {"nitroarene": 2, "epoxide": 1}), ("C=C; oxirane", {
-        "alkene": 1, "epoxide": 1}), ("Azide, azide", {"azide": 2}), ("none", {}), ("nil", {}),
-])
+@pytest.mark.parametrize(
+    ("text", "expected"),
+    [
+        ("azide", {"azide": 1}),
+        ("2 nitroarene, epoxide", {"nitroarene": 2, "epoxide": 1}),
+        ("C=C; oxirane", {"alkene": 1, "epoxide": 1}),
+        ("Azide, azide", {"azide": 2}),
+        ("none", {}),
+        ("nil", {}),
+    ],
+)
 def test_declared_groups(text: str, expected: dict[str, int]) -> None:
     found = read_groups(text)
     assert found is not None

@@ -79,9 +79,7 @@ def test_a_basis_that_does_not_take_part_is_a_fault(code: SimpleNamespace) -> No
 
 
 @pytest.mark.parametrize(("loss", "heat", "slope"), [("reacted", -20, 40), ("unreacted", -10, 0)])
-def test_a_yield_with_uncertainty_has_its_sensitivity(
-    code: SimpleNamespace, loss: str, heat: int, slope: int
-) -> None:
+def test_a_yield_with_uncertainty_has_its_sensitivity(code: SimpleNamespace, loss: str, heat: int, slope: int) -> None:
     # ξ = 1/y: reacted ΔH/y, derivative −ΔH/y²; unreacted y·ΔH/y = ΔH, derivative 0
     made = code.route("R", "P", code.step("S1", "A -> P", "-10 ± 1", "50 ± 2 %"))
     step = made.steps[0]
@@ -91,8 +89,12 @@ def test_a_yield_with_uncertainty_has_its_sensitivity(
 
 
 def test_an_unreacted_loss_at_full_yield_still_has_a_sensitivity_upstream(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B", "-10 ± 1", "100 ± 1 %"),
-                      code.step("S2", "B -> P", "-10 ± 1", "100 ± 1 %", loss="unreacted"))
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B", "-10 ± 1", "100 ± 1 %"),
+        code.step("S2", "B -> P", "-10 ± 1", "100 ± 1 %", loss="unreacted"),
+    )
     found = [heat_on_basis(extents(made), s, s.row.heat_sum(1.0), Fraction(1), s.loss_counts) for s in made.steps]
     assert {d.name: c for d, c in found[0].terms} == {"S1": 1, "yield of S1": 10, "yield of S2": 10}
     assert {d.name: c for d, c in found[1].terms} == {"S2": 1}

@@ -17,14 +17,24 @@ from routeheat.process.levels import (
 )
 
 
-@pytest.mark.parametrize(("rise", "word"), [(49.9, "negligible"), (50, "medium"), (200, "critical"),
-                                            (400, "catastrophic")])
+@pytest.mark.parametrize(
+    ("rise", "word"), [(49.9, "negligible"), (50, "medium"), (200, "critical"), (400, "catastrophic")]
+)
 def test_four_levels_of_severity(rise: float, word: str) -> None:
     assert severity(rise, levels=4).word == word
 
 
-@pytest.mark.parametrize(("hours", "word"), [(101, "almost impossible"), (100, "improbable"), (50, "seldom"),
-                                             (24, "occasional"), (8, "probable"), (1, "frequent")])
+@pytest.mark.parametrize(
+    ("hours", "word"),
+    [
+        (101, "almost impossible"),
+        (100, "improbable"),
+        (50, "seldom"),
+        (24, "occasional"),
+        (8, "probable"),
+        (1, "frequent"),
+    ],
+)
 def test_six_levels_of_probability(hours: float, word: str) -> None:
     assert probability(hours, levels=6).word == word
 
@@ -45,8 +55,7 @@ def test_more_rise_is_never_less_severe(one: float, two: float) -> None:
 def test_less_time_is_never_less_probable(one: float, two: float) -> None:
     low, high = sorted((one, two))
     for levels, words in ((3, PROBABILITY_3), (6, PROBABILITY_6)):
-        assert words.index(probability(low, levels=levels).word) >= words.index(
-            probability(high, levels=levels).word)
+        assert words.index(probability(low, levels=levels).word) >= words.index(probability(high, levels=levels).word)
 
 
 def test_thresholds_can_be_set() -> None:
@@ -55,9 +64,15 @@ def test_thresholds_can_be_set() -> None:
     assert probability(30, thresholds=own).word == "medium"
 
 
-@pytest.mark.parametrize("wrong", [
-    {"severity_3": (200.0, 50.0)}, {"probability_3": (8.0, 24.0)}, {"margin": 0.0}, {"reachable": 1.0},
-])
+@pytest.mark.parametrize(
+    "wrong",
+    [
+        {"severity_3": (200.0, 50.0)},
+        {"probability_3": (8.0, 24.0)},
+        {"margin": 0.0},
+        {"reachable": 1.0},
+    ],
+)
 def test_thresholds_out_of_order_are_refused(wrong: dict[str, object]) -> None:
     with pytest.raises(ValueError, match=r"thresholds|lies in"):
         Thresholds(**wrong)  # type: ignore[arg-type]

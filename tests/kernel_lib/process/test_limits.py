@@ -16,6 +16,7 @@ CP = Value(1.8)
 @pytest.fixture
 def keys(code: SimpleNamespace):  # type: ignore[no-untyped-def]
     """Settings from short texts; flags as True."""
+
     def made(**typed: object) -> Settings:
         return Settings((key, code.measured(item) if isinstance(item, str) else item) for key, item in typed.items())
 
@@ -125,8 +126,14 @@ def test_boiling_point_at_another_pressure_needs_the_latent_heat(keys) -> None: 
 
 
 def closed(**more: object) -> dict[str, object]:
-    return {"boiling": "100 degC", "closed": True, "pmax": "6 bar", "latent": "2257 kJ/kg", "vapourM": "18.015 g/mol",
-            **more}
+    return {
+        "boiling": "100 degC",
+        "closed": True,
+        "pmax": "6 bar",
+        "latent": "2257 kJ/kg",
+        "vapourM": "18.015 g/mol",
+        **more,
+    }
 
 
 def test_closed_vessel_reaches_its_pressure_limit(keys) -> None:  # type: ignore[no-untyped-def]

@@ -20,7 +20,11 @@ def messages(route: Route) -> str:
 def test_the_main_product_is_the_only_one_used_later(amide_routes: dict[str, Route]) -> None:
     links = read_links(amide_routes["1"])
     assert {label: made.text for label, made in links.product.items()} == {
-        "X1": "ACI(s)", "X2": "ACL(l)", "Y1": "AMI(s)", "C": "AMD(sln)", "F": "AMD(s)",
+        "X1": "ACI(s)",
+        "X2": "ACL(l)",
+        "Y1": "AMI(s)",
+        "C": "AMD(sln)",
+        "F": "AMD(s)",
     }
 
 
@@ -56,8 +60,9 @@ def test_a_typed_product_settles_it(code: SimpleNamespace) -> None:
 
 
 def test_a_species_taken_by_recycle_is_no_candidate(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B + K"),
-                      code.step("S2", "B + K -> P", recycle=[("K", "S1", "50 %")]))
+    made = code.route(
+        "R", "P", code.step("S1", "A -> B + K"), code.step("S2", "B + K -> P", recycle=[("K", "S1", "50 %")])
+    )
     assert route_faults(made) == ()
 
 
@@ -79,8 +84,9 @@ def test_made_and_never_used(code: SimpleNamespace) -> None:
 
 def test_a_phase_that_jumps_to_a_later_step(code: SimpleNamespace) -> None:
     made = code.route("R", "P", code.step("C", "A -> B(sln)"), code.step("F", "B(s) -> P"))
-    assert messages(made) == ("C: a phase that jumps between steps: B(sln) made by C, B(s) used by F "
-                              "(add a row for B(sln) -> B(s))")
+    assert messages(made) == (
+        "C: a phase that jumps between steps: B(sln) made by C, B(s) used by F (add a row for B(sln) -> B(s))"
+    )
 
 
 def test_a_phase_that_jumps_though_the_made_one_is_used_too(code: SimpleNamespace) -> None:
@@ -101,8 +107,9 @@ def test_a_declared_species_and_its_bare_formula_are_one_substance(code: SimpleN
 
 def test_two_declared_isomers_are_not_one_substance(code: SimpleNamespace) -> None:
     d = {"ISO": "C3H8O", "NOR": "C3H8O"}
-    made = code.route("R", "P", code.step("S1", "A -> ISO(l)", declared=d),
-                      code.step("S2", "ISO(l) + NOR(s) -> P", declared=d))
+    made = code.route(
+        "R", "P", code.step("S1", "A -> ISO(l)", declared=d), code.step("S2", "ISO(l) + NOR(s) -> P", declared=d)
+    )
     assert route_faults(made) == ()
 
 
@@ -112,8 +119,9 @@ def test_used_before_it_is_made(code: SimpleNamespace) -> None:
 
 
 def test_used_before_and_after_it_is_made(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A + B -> D"), code.step("S2", "K -> B"),
-                      code.step("S3", "D + B -> P", limiting="D"))
+    made = code.route(
+        "R", "P", code.step("S1", "A + B -> D"), code.step("S2", "K -> B"), code.step("S3", "D + B -> P", limiting="D")
+    )
     assert messages(made).startswith("S1: B is used before it is made (by S2)")
 
 
@@ -131,7 +139,8 @@ def test_two_incoming_intermediates_need_a_limiting_one(amide_routes: dict[str, 
     route = amide_routes["1"]
     steps = tuple(replace(step, limiting=None) if step.label == "C" else step for step in route.steps)
     assert "C: 2 intermediates come in, ACL(l) and AMI(s): which one is limiting?" in messages(
-        replace(route, steps=steps))
+        replace(route, steps=steps)
+    )
 
 
 @pytest.mark.parametrize("typed", ["0 %", "101 %", "-5 %"])
@@ -151,8 +160,10 @@ def test_an_impossible_yield(code: SimpleNamespace, typed: str) -> None:
         ({"recycle": [("K", "S9", "50 %")]}, "S1: recycle K from S9: S9 is no step of the route"),
         ({"recycle": [("K", "S1", "50 %")]}, "S1: nothing of K leaves S1: there is nothing to recycle"),
         ({"recycle": [("K", "S1", "120 %")], "equiv": {"K": "2"}}, "S1: recycle K from S1: a part of 120 % cannot be"),
-        ({"recycle": [("K", "S1", "60 %"), ("K", "S1", "50 %")], "equiv": {"K": "2"}},
-         "S1: 110 % of the K that leaves S1 are recycled"),
+        (
+            {"recycle": [("K", "S1", "60 %"), ("K", "S1", "50 %")], "equiv": {"K": "2"}},
+            "S1: 110 % of the K that leaves S1 are recycled",
+        ),
     ],
 )
 def test_numbers_and_species_that_do_not_fit(code: SimpleNamespace, keys: dict[str, object], message: str) -> None:
@@ -161,11 +172,17 @@ def test_numbers_and_species_that_do_not_fit(code: SimpleNamespace, keys: dict[s
 
 
 def test_recycling_a_main_product(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B"),
-                      code.step("S2", "B -> P", recycle=[("B", "S1", "50 %")], equiv={}))
+    made = code.route(
+        "R", "P", code.step("S1", "A -> B"), code.step("S2", "B -> P", recycle=[("B", "S1", "50 %")], equiv={})
+    )
     assert "made and never used" in messages(made)
-    typed = code.route("R", "P", code.step("S1", "A -> B"), code.step("S2", "B -> D"),
-                       code.step("S3", "D + B -> P", limiting="D", recycle=[("B", "S1", "50 %")]))
+    typed = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B"),
+        code.step("S2", "B -> D"),
+        code.step("S3", "D + B -> P", limiting="D", recycle=[("B", "S1", "50 %")]),
+    )
     assert "recycle B from S1: it is the main product of S1" in messages(typed)
 
 
@@ -202,20 +219,29 @@ def test_a_single_fault_keeps_its_place(code: SimpleNamespace) -> None:
 
 
 def test_a_loop_that_returns_everything(code: SimpleNamespace) -> None:
-    loop = code.route("R", "P", code.step("S1", "A -> B"),
-                      code.step("S2", "2 B + K -> P + M", recycle=[("B", "S3", "100 %")], product="M"),
-                      code.step("S3", "M -> P + 2 B", product="P"))
+    loop = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B"),
+        code.step("S2", "2 B + K -> P + M", recycle=[("B", "S3", "100 %")], product="M"),
+        code.step("S3", "M -> P + 2 B", product="P"),
+    )
     assert "the recycle returns everything that is needed, so the step would run 0 times" in messages(loop)
 
 
 def test_a_recycle_larger_than_the_need(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "K + A -> B", recycle=[("K", "S2", "100 %")]),
-                      code.step("S2", "B -> P + 2 K"))
+    made = code.route(
+        "R", "P", code.step("S1", "K + A -> B", recycle=[("K", "S2", "100 %")]), code.step("S2", "B -> P + 2 K")
+    )
     assert "S1: the recycle returns more K than the step uses" in messages(made)
 
 
 def test_a_circle_that_never_delivers(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A + D -> B", recycle=[("D", "S3", "10 %")]),
-                      code.step("S2", "B -> D"),
-                      code.step("S3", "D + K -> P", limiting="K", equiv={"D": "2"}))
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A + D -> B", recycle=[("D", "S3", "10 %")]),
+        code.step("S2", "B -> D"),
+        code.step("S3", "D + K -> P", limiting="K", equiv={"D": "2"}),
+    )
     assert messages(made).startswith("route R never delivers P: the recycle returns everything that is made")

@@ -52,10 +52,13 @@ def test_an_insufficient_jacket_says_how_long_to_feed(step: VesselStep) -> None:
     assert curve.notes[0] == "Insufficient: extend feed to at least 1.12 h."
 
 
-@pytest.mark.parametrize(("stirring", "words", "count"), [
-    (24.0, "No feed keeps within the margin: stirring alone exceeds it.", 2),
-    (30.0, "No feed is slow enough: stirring alone takes the whole capacity.", 1),
-])
+@pytest.mark.parametrize(
+    ("stirring", "words", "count"),
+    [
+        (24.0, "No feed keeps within the margin: stirring alone exceeds it.", 2),
+        (30.0, "No feed is slow enough: stirring alone takes the whole capacity.", 1),
+    ],
+)
 def test_stirring_that_leaves_nothing_is_said(step: VesselStep, stirring: float, words: str, count: int) -> None:
     curve = with_feed(step, FeedCheck(replace(VESSEL, stirring_kw=stirring), 1.5, 0.8, False)).curve()
     assert words in curve.notes

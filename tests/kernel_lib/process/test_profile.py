@@ -36,14 +36,18 @@ def test_totals_of_convergent_routes(
 
 def test_cumulative_heats_follow_working_order_with_side_rows(amide_routes: dict[str, Route]) -> None:
     found = profile(amide_routes["1"])
-    assert [round(item.cumulative.value, 1) for item in found.steps] == [
-        -76.5, -61.0, -97.9, -817.7, -985.0, -1011.6]
+    assert [round(item.cumulative.value, 1) for item in found.steps] == [-76.5, -61.0, -97.9, -817.7, -985.0, -1011.6]
     assert round(found.side_total.value, 1) == -36.9
 
 
 def test_a_linear_route_per_mole_charged(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B", "-80", "90 %"), code.step("S2", "B -> D", "-150", "80 %"),
-                      code.step("S3", "D -> P", "-45", "75 %"))
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B", "-80", "90 %"),
+        code.step("S2", "B -> D", "-150", "80 %"),
+        code.step("S3", "D -> P", "-45", "75 %"),
+    )
     found = profile(made)
     assert [round(item.cumulative.value, 1) for item in found.steps] == [-148.1, -398.1, -458.1]
     assert found.overall_yield == Fraction(54, 100) == found.yield_on_first_reactant
@@ -52,7 +56,8 @@ def test_a_linear_route_per_mole_charged(code: SimpleNamespace) -> None:
 def test_nitric_acid_without_recycle(code: SimpleNamespace) -> None:
     # OpenStax, Chemistry 2e (2019), sec. 5.3: printed answer −494 kJ per mole of HNO3
     made = code.route(
-        "N", "HNO3(aq)",
+        "N",
+        "HNO3(aq)",
         code.step("S1", "4 NH3(g) + 5 O2(g) -> 4 NO(g) + 6 H2O(g)", "-907"),
         code.step("S2", "2 NO(g) + O2(g) -> 2 NO2(g)", "-113"),
         code.step("S3", "3 NO2(g) + H2O(l) -> 2 HNO3(aq) + NO(g)", "-139"),
@@ -68,8 +73,14 @@ def test_yields_along_the_longest_chain_and_on_the_first_reactant(amide_routes: 
 
 
 def test_the_longest_chain_need_not_be_the_first(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B"), code.step("S2", "K -> D"), code.step("S3", "D -> E"),
-                      code.step("S4", "B + E -> P", limiting="B"))
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B"),
+        code.step("S2", "K -> D"),
+        code.step("S3", "D -> E"),
+        code.step("S4", "B + E -> P", limiting="B"),
+    )
     assert profile(made).chain == ("S2", "S3", "S4")
 
 
@@ -92,8 +103,11 @@ def test_a_route_minus_itself_is_exactly_nothing(amide_routes: dict[str, Route])
 def test_the_choice_of_loss_is_named_with_the_other_total(amide_routes: dict[str, Route]) -> None:
     found = profile(amide_routes["1"])
     assert found.total_if("reacted").exact == found.total.exact
-    by_hand = sum(item.heat.exact * item.step.yield_value if not item.side else item.heat.exact
-                  for item in found.steps if item.heat is not None)
+    by_hand = sum(
+        item.heat.exact * item.step.yield_value if not item.side else item.heat.exact
+        for item in found.steps
+        if item.heat is not None
+    )
     assert found.total_if("unreacted").exact == by_hand
     assert "loss counted as reacted: heat per mole charged" in found.notes
     assert "with the loss of every step counted as unreacted, the total is −922 ± 23 (k = 1) kJ/mol" in found.notes
@@ -109,21 +123,29 @@ def test_a_crystallisation_counts_what_it_delivers_unless_typed(amide_routes: di
 
 
 def test_yields_without_uncertainty_are_named(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B", "-1 ± 1", "90 %"), code.step("S2", "B -> D", "-1 ± 1"),
-                      code.step("S3", "D -> P", "-1 ± 1", "90 ± 1 %"))
-    assert profile(made).yield_notes == (
-        "no yield typed, counted as 100 %: S2", "yield uncertainty not included: S1")
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B", "-1 ± 1", "90 %"),
+        code.step("S2", "B -> D", "-1 ± 1"),
+        code.step("S3", "D -> P", "-1 ± 1", "90 ± 1 %"),
+    )
+    assert profile(made).yield_notes == ("no yield typed, counted as 100 %: S2", "yield uncertainty not included: S1")
 
 
 def test_temperatures_that_differ_are_named(amine_routes: dict[str, Route]) -> None:
     note = "heats at different temperatures, not brought to one temperature: A1 20 °C; A2 60 °C"
-    assert note in profile(amine_routes["A"]).notes
+    assert any(text.startswith(note) for text in profile(amine_routes["A"]).notes)
     assert not any("different temperatures" in text for text in profile(amine_routes["B"]).notes)
 
 
 def _without_heat(route: Route, *labels: str) -> Route:
-    return replace(route, steps=tuple(
-        replace(step, row=replace(step.row, heat=None)) if step.label in labels else step for step in route.steps))
+    return replace(
+        route,
+        steps=tuple(
+            replace(step, row=replace(step.row, heat=None)) if step.label in labels else step for step in route.steps
+        ),
+    )
 
 
 def test_a_sum_with_a_missing_heat_is_not_called_a_total(amide_routes: dict[str, Route]) -> None:
@@ -158,7 +180,15 @@ def test_an_endothermic_route_has_no_exotherm(code: SimpleNamespace) -> None:
 def test_side_rows_stand_below_a_subtotal(amide_routes: dict[str, Route]) -> None:
     table = profile(amide_routes["1"]).table()
     assert [row[0] for row in table.rows] == [
-        "X1", "X2", "Y1", "C", "F", "steps without side rows", "X2q (side row of X2)", "total"]
+        "X1",
+        "X2",
+        "Y1",
+        "C",
+        "F",
+        "steps without side rows",
+        "X2q (side row of X2)",
+        "total",
+    ]
     assert table.strong == {5, 7}
     released = [row[6] for row in table.rows]
     assert released[0] == pytest.approx(76.52, abs=0.01)
@@ -177,7 +207,10 @@ def test_ladder_heads_show_cumulative_levels_and_captions_own_heats(amide_routes
     assert [arrow.role for arrow in arrows] == ["step", "step", "side", "step", "step", "step"]
     assert all(a.end == b.start for a, b in pairwise(arrows))
     assert (arrows[-1].caption, round(arrows[-1].end or 0, 1), round(arrows[-1].spread or 0, 1)) == (
-        "−26.6 ± 5.3", -1011.6, 25.4)
+        "−26.6 ± 5.3",
+        -1011.6,
+        25.4,
+    )
     assert (ladder.unit, plain(ladder.axis)) == ("kJ mol⁻¹", "cumulative ΔrH")
 
 
@@ -261,7 +294,8 @@ def test_the_uncertainty_of_every_heat_counts(amide_routes: dict[str, Route]) ->
         assert heat is not None
         assert heat.amount is not None
         bare = replace(step, row=replace(step.row, heat=replace(heat, amount=replace(heat.amount, spread=None))))
-        total: HeatSum = profile(replace(route, steps=tuple(
-            bare if s.label == step.label else s for s in route.steps))).total
+        total: HeatSum = profile(
+            replace(route, steps=tuple(bare if s.label == step.label else s for s in route.steps))
+        ).total
         assert total.not_stated == (step.label,)
         assert "at least" in total.text

@@ -13,8 +13,9 @@ from routeheat.process.screening import Screening, energetic_screen
 
 
 def screen(code: SimpleNamespace, formula: str, **keys: str) -> Screening:
-    settings = tuple((key, code.measured(item) if item[0].isdigit() and key != "groups" else item)
-                     for key, item in keys.items())
+    settings = tuple(
+        (key, code.measured(item) if item[0].isdigit() and key != "groups" else item) for key, item in keys.items()
+    )
     species = code.species("SUB(s)", {"SUB": formula})
     return energetic_screen(Declaration(species, settings=settings))
 
@@ -35,8 +36,7 @@ def test_groups_not_declared_is_not_no_groups(code: SimpleNamespace) -> None:
     found = screen(code, "C9H8FN3O2")
     assert found.groups is None
     assert "not declared" in found["oxygen balance"].finding
-    assert found["waiver, explosives class"].finding == \
-        "no waiver on the data entered (energetic groups not declared)"
+    assert found["waiver, explosives class"].finding == "no waiver on the data entered (energetic groups not declared)"
     assert found["decomposition energy by groups"].value == "none"
 
 
@@ -59,11 +59,16 @@ def test_energy_waiver_needs_a_measurement_with_its_onset(code: SimpleNamespace)
     assert without["waiver, explosives class"].finding == "no waiver on the data entered"
 
 
-@pytest.mark.parametrize(("keys", "words"), [
-    ({"Qdec": "299 J/g"}, "below 300 J/g"), ({"Qdec": "300 J/g"}, "no waiver"),
-    ({"SADT": "76 degC"}, "SADT above 75 °C"),
-    ({"SADT": "75 degC"}, "no waiver"), ({}, "no waiver"),
-])
+@pytest.mark.parametrize(
+    ("keys", "words"),
+    [
+        ({"Qdec": "299 J/g"}, "below 300 J/g"),
+        ({"Qdec": "300 J/g"}, "no waiver"),
+        ({"SADT": "76 degC"}, "SADT above 75 °C"),
+        ({"SADT": "75 degC"}, "no waiver"),
+        ({}, "no waiver"),
+    ],
+)
 def test_self_reactive_waiver(code: SimpleNamespace, keys: dict[str, str], words: str) -> None:
     assert words in screen(code, "C7H7NO2", groups="nitroarene", **keys)["waiver, self-reactive class"].finding
 

@@ -13,7 +13,11 @@ from routeheat.process.settings import HOURS, Settings
 def test_keys_that_are_not_typed_are_nothing() -> None:
     empty = Settings(())
     assert (empty.value("feed", HOURS), empty.text("nil"), empty.flag("batch"), empty.species("fed")) == (
-        None, "", False, None)
+        None,
+        "",
+        False,
+        None,
+    )
     assert "feed" not in empty
     assert empty.number("margin", HOURS, 0.8) == 0.8
 

@@ -24,8 +24,13 @@ def test_an_unreacted_loss_leaves_as_reactants(code: SimpleNamespace) -> None:
 
 
 def test_intermediates_are_not_bought_and_their_excess_leaves(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A -> B"), code.step("S2", "K -> D"),
-                      code.step("S3", "B + D -> P", limiting="B", equiv={"D": "1.2"}))
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A -> B"),
+        code.step("S2", "K -> D"),
+        code.step("S3", "B + D -> P", limiting="B", equiv={"D": "1.2"}),
+    )
     assert named(made) == ({"A": 1, "K": Fraction(6, 5)}, {"D": Fraction(1, 5)})
 
 
@@ -41,8 +46,12 @@ def test_a_catalyst_goes_in_and_out(code: SimpleNamespace) -> None:
 
 
 def test_a_side_row_takes_up_what_leaves_its_parent_first(code: SimpleNamespace) -> None:
-    made = code.route("R", "P", code.step("S1", "A + K -> P", equiv={"K": "1.3"}),
-                      code.step("Q", "K + W -> N", side="S1", amount="0.5"))
+    made = code.route(
+        "R",
+        "P",
+        code.step("S1", "A + K -> P", equiv={"K": "1.3"}),
+        code.step("Q", "K + W -> N", side="S1", amount="0.5"),
+    )
     bought, leaving = named(made)
     assert bought == {"A": 1, "K": Fraction(13, 10) + Fraction(2, 10), "W": Fraction(1, 2)}
     assert leaving == {"N": Fraction(1, 2)}

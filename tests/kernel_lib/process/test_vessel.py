@@ -20,8 +20,16 @@ from routeheat.process.levels import Thresholds
 from routeheat.process.runaway import adiabatic_rise, specific_adiabatic_rise
 from routeheat.process.vessel import vessel
 
-FULL = {"feed": "1.5 h", "Xac": "0.30", "MTT": "130 degC", "TD24": "95 degC", "size": "400 mol", "U": "350 W/(m2 K)",
-        "area": "1.4 m2", "jacket": "-10 degC"}
+FULL = {
+    "feed": "1.5 h",
+    "Xac": "0.30",
+    "MTT": "130 degC",
+    "TD24": "95 degC",
+    "size": "400 mol",
+    "U": "350 W/(m2 K)",
+    "area": "1.4 m2",
+    "jacket": "-10 degC",
+}
 
 
 def typed(code: SimpleNamespace, step: Step, **keys: object) -> Step:
@@ -76,10 +84,19 @@ def test_limiting_reactant_taken_is_said(nitration: Step) -> None:
     assert "limiting reactant not stated: C6H6(l) is taken" in vessel(nitration).notices
 
 
-@pytest.mark.parametrize(("key", "same"), [
-    ("MTT", "403.15 K"), ("TD24", "368.15 K"), ("feed", "90 min"), ("Xac", "30 %"), ("size", "0.4 kmol"),
-    ("U", "0.35 kW/(m2 K)"), ("area", "14000 cm2"), ("jacket", "263.15 K"),
-])
+@pytest.mark.parametrize(
+    ("key", "same"),
+    [
+        ("MTT", "403.15 K"),
+        ("TD24", "368.15 K"),
+        ("feed", "90 min"),
+        ("Xac", "30 %"),
+        ("size", "0.4 kmol"),
+        ("U", "0.35 kW/(m2 K)"),
+        ("area", "14000 cm2"),
+        ("jacket", "263.15 K"),
+    ],
+)
 def test_units_never_change_a_result(code: SimpleNamespace, nitration: Step, key: str, same: str) -> None:
     one, two = vessel(nitration).to_dict(), vessel(typed(code, nitration, **{key: same})).to_dict()
     assert one == two
@@ -87,8 +104,12 @@ def test_units_never_change_a_result(code: SimpleNamespace, nitration: Step, key
 
 def test_calories_never_change_a_result(code: SimpleNamespace) -> None:
     joule = code.step("A", "C6H6(l) -> C6H6(g)", "-41.84 ± 4.184", conc="1.5", cp="2.092", at="20 degC")
-    calorie = replace(joule, row=replace(joule.row, heat=replace(joule.row.heat, amount=code.measured(
-        "-10 ± 1 kcal/mol"))), heat_capacity=code.measured("0.5 cal/(g K)"), temperature=code.measured("293.15 K"))
+    calorie = replace(
+        joule,
+        row=replace(joule.row, heat=replace(joule.row.heat, amount=code.measured("-10 ± 1 kcal/mol"))),
+        heat_capacity=code.measured("0.5 cal/(g K)"),
+        temperature=code.measured("293.15 K"),
+    )
     one, two = vessel(joule), vessel(calorie)
     assert one.rise.value == pytest.approx(30.0)
     assert one.to_dict() == two.to_dict()
@@ -117,8 +138,9 @@ def test_every_subset_of_missing_inputs_is_refused_by_name(nitration: Step, gone
 
 @pytest.mark.parametrize("key", ["size", "U", "area", "jacket"])
 def test_feed_check_names_what_is_missing(nitration: Step, key: str) -> None:
-    step = replace(nitration, row=replace(nitration.row, settings=tuple(
-        item for item in nitration.row.settings if item[0] != key)))
+    step = replace(
+        nitration, row=replace(nitration.row, settings=tuple(item for item in nitration.row.settings if item[0] != key))
+    )
     found = vessel(step).feed
     assert isinstance(found, NotAssessed)
     assert found.missing == (("size or mass",) if key == "size" else (key,))
@@ -183,8 +205,9 @@ def test_contradicting_concentration_is_said(code: SimpleNamespace, nitration: S
 
 
 def test_evaporation_between_boiling_point_and_mtsr(code: SimpleNamespace, nitration: Step) -> None:
-    found = vessel(typed(code, nitration, MTT="40 degC", latent="400 kJ/kg", qref="10 W/kg", Tref="100 degC",
-                         E="100 kJ/mol")).boiling
+    found = vessel(
+        typed(code, nitration, MTT="40 degC", latent="400 kJ/kg", qref="10 W/kg", Tref="100 degC", E="100 kJ/mol")
+    ).boiling
     assert isinstance(found, Boiling)
     assert found.evaporated_kg == pytest.approx(250 * 1.75 * (57.0286 - 40) / 400, rel=1e-4)
     assert found.vapour_kg_per_h is not None
@@ -196,10 +219,14 @@ def test_closed_vessel_does_not_boil_off(code: SimpleNamespace, nitration: Step)
     assert isinstance(found, NotAssessed)
 
 
-@pytest.mark.parametrize(("keys", "words"), [
-    ({"batch": True, "Xac": "1"}, "batch and feed are both typed"), ({"margin": "1.2"}, "margin"),
-    ({"Xac": "1.5"}, "between 0 and 1"),
-])
+@pytest.mark.parametrize(
+    ("keys", "words"),
+    [
+        ({"batch": True, "Xac": "1"}, "batch and feed are both typed"),
+        ({"margin": "1.2"}, "margin"),
+        ({"Xac": "1.5"}, "between 0 and 1"),
+    ],
+)
 def test_faults_are_listed(code: SimpleNamespace, nitration: Step, keys: dict[str, object], words: str) -> None:
     found = vessel(typed(code, nitration, **keys))
     assert any(words in fault for fault in found.faults)

@@ -19,7 +19,8 @@ from routeheat.process.waste import e_factor, mass_intensity, pmi_difference, wa
 def charged(route: Route, **texts: str) -> Route:
     steps = tuple(
         replace(step, row=replace(step.row, settings=(*step.row.settings, ("charges", texts[step.label]))))
-        if step.label in texts else step
+        if step.label in texts
+        else step
         for step in route.steps
     )
     return replace(route, steps=steps)
@@ -44,7 +45,8 @@ def test_convergent_atom_economy_counts_both_branches(amide_routes: dict[str, Ro
     species = amide_routes["1"].makes
     used = 208.257 + 118.96 + 222.2 + 3 * 2.016 + 101.19
     assert waste(amide_routes["1"]).whole.atom_economy == pytest.approx(
-        100 * float(species.molar_mass or 0) / used, abs=0.1)
+        100 * float(species.molar_mass or 0) / used, abs=0.1
+    )
 
 
 def test_side_rows_in_or_out(amide_routes: dict[str, Route]) -> None:

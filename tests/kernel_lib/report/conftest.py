@@ -48,6 +48,32 @@ route A "over the nitro compound" makes ANI
 """
 """A derived heat, one that is not entered, a target with two ways and one out of reach."""
 
+WHOLE = """uncertainty k = 1
+
+species
+  EST  C12H16O3(l) | name "methyl ester"
+  ACI  C11H14O3(s) | name "acid"
+  AZI  C9H8FN3O2(sln) | groups azide | Qdec 900 J/g | onset 120 degC
+
+known
+  [K1] formation of CO2(g)
+       dH -393.5 ± 0.1 kJ/mol
+  [K2] formation of CO(g)
+       dH -110.5 ± 0.2 kJ/mol
+  [K3] 2 CO(g) + O2(g) -> 2 CO2(g)
+       dH -560 ± 1 kJ/mol | widen 2 "old calorimeter" | accept "kept for comparison"
+  [K4] formation of H2O(l)
+       dH -285.83 ± 0.04 kJ/mol
+
+route 1 "feed in a jacketed vessel" makes ACI
+  [X1] EST + H2O(l) -> ACI + CH4O(l)
+       dH -155 ± 3 kJ/mol | yield 93 % | T 40 degC | conc 1.0 mol/kg | cp 3.2 kJ/(kg K) | feed 2 h | Xac 20 %
+       size 400 mol | U 350 W/(m2 K) | area 1.4 m2 | jacket 10 degC | MTT 95 ± 3 degC | TD24 110 ± 10 degC
+       charges toluene 5 L/kg density 0.867 kg/L, water 3 kg
+       nil "quench, work-up, neutralisation, dissolution, crystallisation, distillation, scrubber: one test step"
+"""
+"""Everything that a report has a section for; compounds and values invented."""
+
 HOSTILE = (
     "<script>alert(1)</script>",
     "a & b \"double\" 'single' ]]>",
@@ -75,14 +101,29 @@ def mixed() -> Sheet:
     return rh.read_sheet(MIXED)
 
 
+@pytest.fixture(scope="session")
+def amide_vessel() -> Sheet:
+    return rh.read_sheet(SHEETS / "amide_vessel.txt")
+
+
+@pytest.fixture(scope="session")
+def whole() -> Sheet:
+    return rh.read_sheet(WHOLE)
+
+
 @pytest.fixture(params=range(len(HOSTILE)))
 def hostile_text(request: pytest.FixtureRequest) -> str:
     return HOSTILE[request.param]
 
 
-@pytest.fixture
-def hostile(mixed: Sheet, hostile_text: str) -> Sheet:
-    """One text as every name, title, source and note of a sheet."""
+def _reason(key: str, text: str) -> str:
+    return f'2 "{text}"' if key == "widen" else text
+
+
+@pytest.fixture(params=["mixed", "whole"])
+def hostile(request: pytest.FixtureRequest, hostile_text: str) -> Sheet:
+    """One text as every name, title, source, reason and note of a sheet."""
+    mixed: Sheet = request.getfixturevalue(request.param)
     text = hostile_text
     routes = {}
     for name, route in mixed.routes.items():
@@ -92,5 +133,11 @@ def hostile(mixed: Sheet, hostile_text: str) -> Sheet:
         )
         routes[name] = replace(route, title=text, steps=steps)
     species = {name: replace(item, title=text, settings=(("note", text),)) for name, item in mixed.species.items()}
-    known = Rows([replace(row, source=text) for row in mixed.known.values()], mixed.known.k)
+    known = Rows(
+        [
+            replace(row, source=text, settings=tuple((k, _reason(k, text)) for k, _ in row.settings))
+            for row in mixed.known.values()
+        ],
+        mixed.known.k,
+    )
     return replace(mixed, routes=routes, species=species, known=known)

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import json
+from fractions import Fraction
 from pathlib import Path
 from typing import Any
 
@@ -40,6 +41,33 @@ route A "over the nitro compound" makes NB
 route B makes NB
   use A1
 """
+
+
+OTHER_HEATS = """
+unstated u = 5 kJ/mol "old tables"
+
+known
+  [K1] sublimation of I2(s) | Q 0.62 ± 0.02 kJ (k = 1) for 10 mmol of I2(s) | shared "cup A" 2 %
+  [K2] combustion of CH4(g) to CO2(g), H2O(l) | dU -885.4 kJ/mol
+  [K3] fusion of H2O(s) | like K1 ± 20 kJ/mol (k = 1)
+"""
+
+
+def test_other_heats_come_back_equal_and_are_spelt_out() -> None:
+    sheet = rh.read_sheet(OTHER_HEATS)
+    text = write_json(sheet)
+    _validate("sheet", text)
+    assert read_json(text) == sheet
+    content = json.loads(text)["content"]
+    run, bomb, like = content["known"]
+    assert content["unstated"]["reason"] == "old tables"
+    assert (run["heat"]["key"], run["heat"]["portion"]["text"]) == ("Q", "10 mmol")
+    assert (run["heat_as_written"]["value"], run["heat_as_written"]["u"]) == ("62", "2")
+    assert bomb["heat"]["key"] == "dU"
+    assert float(Fraction(bomb["heat_as_written"]["value"])) == pytest.approx(-885.4 - 2 * 2.479, abs=0.001)
+    assert (like["heat"]["analogue"], like["estimated"], run["estimated"]) == ("K1", True, False)
+    assert like["heat_as_written"]["value"] == "62"
+    assert float(Fraction(like["heat_as_written"]["u"])) == pytest.approx((20**2 + 2**2) ** 0.5)
 
 
 def _results() -> list[Shown]:

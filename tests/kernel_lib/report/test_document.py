@@ -10,7 +10,8 @@ import pytest
 import routeheat as rh
 from routeheat.chem.route import Sheet
 from routeheat.errors import UnitError, UnknownName
-from routeheat.present.markup import plain
+from routeheat.present.markup import Run, plain
+from routeheat.present.table import Column, Table
 from routeheat.process.cautions import FULL, SHORT
 from routeheat.report.columns import PAGE, folded, needs, widths
 from routeheat.report.document import (
@@ -23,6 +24,7 @@ from routeheat.report.document import (
     Paragraph,
     TableBlock,
     blocks_of,
+    table_block,
 )
 from routeheat.report.matter import gather
 from routeheat.report.sections import PARTS, SECTION_NAMES, build
@@ -53,10 +55,10 @@ def section(document: Document, name: str) -> str:
 def test_sections_stand_in_the_fixed_order(mixed: Sheet) -> None:
     document = build(gather(mixed, question="Which way?"))
     names = [item.name for item in document.sections]
-    assert names == [name for name in SECTION_NAMES if name != "comparison"]
+    assert names == [name for name in SECTION_NAMES if name not in ("comparison", "screening")]
     assert SECTION_NAMES == (
         "question", "routes", "comparison", "profiles", "steps", "combinations", "not_entered", "assumptions",
-        "methods", "data", "sheet", "cautions",
+        "reconciled", "next", "scale", "screening", "waste", "methods", "data", "sheet", "cautions",
     )  # fmt: skip
 
 
@@ -82,7 +84,7 @@ def test_tables_and_figures_are_numbered_through(amine: Sheet) -> None:
     tables = [block.number for block in blocks if isinstance(block, TableBlock)]
     figures = [block.number for block in blocks if isinstance(block, FigureBlock)]
     assert tables == list(range(1, len(tables) + 1))
-    assert figures == list(range(1, 8))  # the comparison, three profiles, single steps of three routes
+    assert figures == list(range(1, 9))  # the comparison, three profiles, single steps of three routes, the strip
 
 
 def test_every_id_is_used_once(mixed: Sheet) -> None:
@@ -232,3 +234,22 @@ def test_a_date_object_is_written_in_iso_form(amine: Sheet) -> None:
 def test_an_empty_sheet_still_makes_a_report() -> None:
     for form in ("html", "docx", "pdf"):
         assert report_bytes(rh.read_sheet(""), form)
+
+
+def test_the_k_of_a_ledger_stands_with_its_row_and_not_in_every_header(mixed: Sheet) -> None:
+    blocks = blocks_of(build(gather(mixed)))
+    ledger = next(block for block in blocks if isinstance(block, TableBlock) and block.id == "ledger-1")
+    assert not any("k" in plain(cell).split() or "±" in plain(cell) for cell in ledger.grid.header)
+    assert plain(ledger.grid.rows[-1][0]) == "ΔrH / (kJ/mol), ± k = 2".replace(" / ", " /\xa0").replace(
+        "± k = ", "±\xa0k\xa0=\xa0"
+    )
+
+
+def test_columns_without_content_are_left_out() -> None:
+    table = Table("t", (Column("a", "a"), Column("b", "b"), Column("c", "c")), (("x", "", 1), ("y", None, 2)))
+    assert [plain(cell) for cell in table_block("t", table).grid.header] == ["a", "c"]
+
+
+def test_a_title_may_have_subscripts() -> None:
+    table = Table((Run("H"), Run("2", "sub"), Run("O")), (Column("a", "a"),), (("x",),))
+    assert table_block("t", table).caption == (Run("H"), Run("2", "sub"), Run("O"))

@@ -23,7 +23,7 @@ def parsed(data: bytes) -> Any:
     return html5lib.HTMLParser(strict=True, namespaceHTMLElements=False).parse(data.decode("utf-8"))
 
 
-@pytest.fixture(scope="module", params=["amine", "amide", "mixed"])
+@pytest.fixture(scope="module", params=["amine", "amide", "mixed", "whole"])
 def page(request: pytest.FixtureRequest) -> Any:
     return parsed(report_bytes(request.getfixturevalue(request.param), "html", question="Which?", date="1 May"))
 

@@ -62,3 +62,7 @@ def test_every_text_is_shown_literally(text: str) -> None:
 
 def test_a_text_stays_on_its_line() -> None:
     assert markdown_text("a\nb\u202e") == "a↵b⟨U+202E⟩"
+
+
+def test_a_title_may_have_subscripts() -> None:
+    assert markdown(Table((Run("CO"), Run("2", "sub")), TABLE.columns, TABLE.rows)).startswith("**CO<sub>2</sub>**")

@@ -29,6 +29,10 @@ known
   [K5] formation of NB | dH x
   [K6] formation of CO2(g)
   [K7] formation of CO(g) | dH -110.5300000000000000001 kJ/mol
+  [K8] sublimation of I2(s) | Q 0.62 ± 0.01 kJ (k = 2) for 10 mmol of I2(s) at 25 degC
+       shared "cup A" 2 % | widen 2 "old, \'cup\'" | includes mixing
+  [K9] combustion of CH4(g) to CO2(g), H2O(l) | dU -885.4 ± 0.3 kJ/mol (k = 2) | exclude "wet gas"
+  [K10] fusion of H2O(s) | like K4 ± 20 kJ/mol (k = 2) | estimated dH
 """)
 
 
@@ -61,8 +65,13 @@ def test_the_page_of_a_whole_workbook_comes_back_equal(tmp_path: Path) -> None:
 
 def test_csv_text_is_harmless_and_complete() -> None:
     lines = known_csv(SHEET.known).splitlines()
-    assert lines[0] == "label,reaction,heat,unit,uncertainty,k,per,temperature,source,note,includes,shared,accept"
-    assert lines[1] == "K1,1/2 N2(g) + 3/2 H2(g) -> NH3(g),-45.940,kJ/mol,0.018,1,,,'=a source,,,,"
+    assert lines[0] == (
+        "label,reaction,heat,unit,uncertainty,k,per,temperature,source,note,estimated,includes,shared,accept,exclude,widen"
+    )
+    assert lines[1] == "K1,1/2 N2(g) + 3/2 H2(g) -> NH3(g),-45.940,kJ/mol,0.018,1,,,'=a source,,,,,,,"
+    assert lines[8].startswith("K8,sublimation of I2(s),Q 0.62 ± 0.01 kJ (k = 2) for 10 mmol of I2(s) at 25 degC,,,,")
+    assert "dU -885.4 ± 0.3 kJ/mol (k = 2)" in lines[9]
+    assert "like K4 ± 20 kJ/mol (k = 2)" in lines[10]
 
 
 def test_another_ending_is_refused(tmp_path: Path) -> None:

@@ -83,7 +83,7 @@ def test_an_edited_formula_of_a_declared_species_is_an_edit() -> None:
 
 def test_without_an_edit_the_versions_are_named(monkeypatch: pytest.MonkeyPatch) -> None:
     kept = _kept(SHEET)
-    monkeypatch.setattr("routeheat.rerun.kept.package_version", lambda: "9.9")
+    monkeypatch.setattr("routeheat.rerun.kept.__version__", "9.9")
     other = dict(kept.result, total=dict(kept.result["total"], exact="-1"))
     now = Kept("x", "Profile", "9.9", other, kept.heats, kept.data, kept.rests_on, kept.rests_on_digest, None)
     tables = explain(kept, now, moved(leaves(kept.result), leaves(now.result), Tolerance()))
