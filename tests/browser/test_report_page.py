@@ -73,9 +73,8 @@ def test_it_prints_on_a4_with_repeated_headers(opened: tuple[Any, list[str]]) ->
     assert "Contents" not in texts[0]
 
 
-def test_what_is_folded_on_the_screen_is_printed(opened: tuple[Any, list[str]], report: Path) -> None:
-    if "amine" not in report.name:
-        pytest.skip("nothing is folded")
+@pytest.mark.parametrize("report", ["amine"], indirect=True)
+def test_what_is_folded_on_the_screen_is_printed(opened: tuple[Any, list[str]]) -> None:
     page, _ = opened
     assert not page.get_by_text("energy equivalent").first.is_visible()
     printed = pypdf.PdfReader(io.BytesIO(page.pdf(prefer_css_page_size=True)))

@@ -17,8 +17,8 @@ from typing import Any
 import pytest
 
 from routeheat.known.heat_capacity import ConstantCp, Nasa7, Nasa9, Shomate
-from routeheat.known.library import DataRefused, fetch
 from routeheat.known.lookup import find_species, rows_text
+from routeheat.known.property_data import DataRefused, fetch
 from routeheat.known.table import KnownSpecies, heat_capacity, species_table
 
 LINES = {line.name + line.state: line for line in species_table()}

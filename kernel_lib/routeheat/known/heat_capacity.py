@@ -8,6 +8,7 @@ to 298.15 K, and :meth:`HeatCapacity.warning` says so.
 from __future__ import annotations
 
 import math
+from abc import ABC, abstractmethod
 from dataclasses import dataclass
 from typing import Protocol
 
@@ -67,7 +68,7 @@ class HeatCapacity(Protocol):
         """What a reader must know about the value at ``t`` K; empty when nothing."""
 
 
-class _Form:
+class _Form(ABC):
     """What the forms share: the guard of the range and the difference of two enthalpies."""
 
     __slots__ = ()
@@ -105,12 +106,13 @@ class _Form:
         self._guard(t)
         return self._enthalpy(t)
 
+    @abstractmethod
     def _cp(self, t: float) -> float:
-        raise NotImplementedError
+        """J/(mol K)."""
 
+    @abstractmethod
     def _enthalpy(self, t: float) -> float:
         """kJ/mol, up to a constant that is the same over the whole range."""
-        raise NotImplementedError
 
 
 @dataclass(frozen=True, slots=True)

@@ -6,8 +6,8 @@ from fractions import Fraction
 import pytest
 
 from routeheat.errors import RouteheatError, UnknownName
-from routeheat.known.library import REFUSED, DataRefused, fetch, fetch_vaporisation
 from routeheat.known.lookup import rows_text
+from routeheat.known.property_data import REFUSED, DataRefused, fetch, fetch_vaporisation
 from routeheat.process.sheet import read_sheet
 
 chemicals = pytest.importorskip("chemicals", reason="the extra 'data' is not installed")
