@@ -1,6 +1,8 @@
-"""Options of the whole test suite."""
+"""What holds for the whole test suite. With NO_SKIPS set, as in CI, a skipped test fails."""
 
 from __future__ import annotations
+
+import os
 
 import pytest
 from hypothesis import settings
@@ -8,10 +10,6 @@ from hypothesis import settings
 # machines are noisy, so no deadlines; the same examples every time, so that a failure can be repeated
 settings.register_profile("routeheat", deadline=None, derandomize=True)
 settings.load_profile("routeheat")
-
-
-def pytest_addoption(parser: pytest.Parser) -> None:
-    parser.addoption("--no-skips", action="store_true", help="a skipped test fails the run (used in CI)")
 
 
 def pytest_collection_modifyitems(config: pytest.Config, items: list[pytest.Item]) -> None:
@@ -27,6 +25,6 @@ def pytest_collection_modifyitems(config: pytest.Config, items: list[pytest.Item
 def pytest_runtest_makereport(item: pytest.Item):  # type: ignore[no-untyped-def]
     outcome = yield
     report = outcome.get_result()
-    if report.skipped and item.config.getoption("--no-skips"):
+    if report.skipped and os.environ.get("NO_SKIPS"):
         report.outcome = "failed"
         report.longrepr = f"skipped, but no skip is allowed here: {report.longrepr}"
