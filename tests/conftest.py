@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import os
+from collections.abc import Generator
 
 import pytest
 from hypothesis import settings
@@ -21,10 +22,10 @@ def pytest_collection_modifyitems(config: pytest.Config, items: list[pytest.Item
     items[:] = kept
 
 
-@pytest.hookimpl(hookwrapper=True)
-def pytest_runtest_makereport(item: pytest.Item):  # type: ignore[no-untyped-def]
-    outcome = yield
-    report = outcome.get_result()
+@pytest.hookimpl(wrapper=True)
+def pytest_runtest_makereport() -> Generator[None, pytest.TestReport, pytest.TestReport]:
+    report = yield
     if report.skipped and os.environ.get("NO_SKIPS"):
         report.outcome = "failed"
         report.longrepr = f"skipped, but no skip is allowed here: {report.longrepr}"
+    return report
