@@ -19,7 +19,7 @@ import traitlets
 
 from routeheat import RouteheatError, UnknownName
 from routeheat.present.html import stylesheet
-from routeheat_widgets import _twin
+from routeheat.process.cautions import SHORT
 from routeheat_widgets._export import Taken, take
 from routeheat_widgets._figure import DeskFigure
 from routeheat_widgets._file import FileState, SheetFile
@@ -185,7 +185,7 @@ class DeskCore(anywidget.AnyWidget):
             "error": self._error,
             "figure": self._figure.model_id,
             "height": self._height,
-            "caution": _twin.CAUTION,
+            "caution": SHORT,
         }
 
     def _fail(self, problem: Exception) -> None:

@@ -8,12 +8,11 @@ from pathlib import Path
 from routeheat.draw import as_drawing, static_svg
 from routeheat.present.html import escape, figure_html, render_table
 from routeheat.present.markup import plain
+from routeheat.process.cautions import SHORT
 from routeheat_widgets import _export
 from routeheat_widgets._model import DeskModel, count_lines
 from routeheat_widgets._view import Picture
 from routeheat_widgets.routes import per_of
-
-CAUTION = "Screening aid: values typed are not verified; no substitute for tests, a hazard study or a competent person."
 
 
 def code(model: DeskModel, picture: Picture, path: Path | None) -> str:
@@ -97,7 +96,7 @@ def static_page(model: DeskModel, picture: Picture | None, question: str) -> str
         if picture.empty:
             parts.append(f"<p>{escape(picture.empty)}</p>")
     parts += [f"<p>{escape(str(fault))}</p>" for fault in model.faults[:20]]
-    parts.append(f"<p>{escape(CAUTION)}</p></div>")
+    parts.append(f"<p>{escape(SHORT)}</p></div>")
     return "\n".join(parts)
 
 

@@ -37,8 +37,8 @@ if TYPE_CHECKING:
 
 CLEAR = 2.0
 """A difference is clear when it is at least this many times its standard uncertainty."""
-_NOTHING = 1e-18
-"""Part of the variance that counts as none."""
+_NOTHING = 1e-12
+"""Part of the variance that counts as none: what rounding leaves where a perfect measurement removes it."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -244,7 +244,7 @@ class _Question:
         self, candidate: Candidate, u_now: float | None, attainable: float, after: float, least: float,
         left: tuple[str, ...], remark: str,
     ) -> Effect:  # fmt: skip
-        u_after, u_least = math.sqrt(max(after, 0.0)), math.sqrt(max(least, 0.0))
+        u_after, u_least = (math.sqrt(left) if left > _NOTHING * self.variance else 0.0 for left in (after, least))
         chance = self._chance(u_after) if self.decides and not self.not_stated else None
         return Effect(candidate.label, candidate.equation, u_now, attainable, u_after, u_least, chance, left, remark)
 

@@ -21,7 +21,6 @@ ATTAINABLE = 5.0
 PART = 0.5
 """Part of its present standard uncertainty to which another heat is taken to be measurable; a choice."""
 _LISTED = 12
-_DUST = 1e-6
 _NO_CHANGE = "does not change it"
 _ASSUMED = (
     "Assumed here: a measurement halves the standard uncertainty that a heat has now; where none is stated it reaches "
@@ -67,14 +66,9 @@ def _asked(target: Target, unit: str, matter: Matter) -> NextMeasurement:
         direct = _part(target.heat.u)
     now = next_measurement(target, attainable=direct, known=matter.sheet.known, routes=routes, unit=unit)
     own = {item.label: _part(item.u_now) for item in now.effects if item.u_now and item.label != _itself(target)}
-    found = next_measurement(
+    return next_measurement(
         target, attainable=direct, known=matter.sheet.known, routes=routes, unit=unit, attainable_for=own
     )
-    # what rounding leaves of an uncertainty that a perfect measurement removes is no uncertainty
-    least = _DUST * found.heat.u
-    return replace(found, effects=tuple(
-        replace(item, u_least=0.0) if item.u_least < least else item for item in found.effects
-    ))  # fmt: skip
 
 
 def _part(u: float) -> float:

@@ -112,7 +112,7 @@ def _routes(found: AtScale, number: int) -> Block:
 
 def _placed(grid: Grid) -> Grid:
     """The grid with each column that only says in which step an extreme lies put behind its value."""
-    places = [index for index, text in enumerate(grid.header) if plain(text) == "in"]
+    places = [index for index, text in enumerate(grid.header) if plain(text) == "its step"]
     rows = tuple(
         tuple(
             join([cell, " (", row[index + 1], ")"]) if index + 1 in places and row[index + 1] else cell
