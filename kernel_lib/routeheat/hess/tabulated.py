@@ -54,7 +54,8 @@ def _line(species: Species) -> KnownSpecies | None:
 def _changes(species: Species, name: str) -> list[Transition]:
     found = []
     for change in transitions():
-        if change.name != name:
+        # a line at 298.15 K is a heat brought to that temperature, not the place where the phase changes
+        if change.name != name or change.temperature == 298.15:
             continue
         heat = HeatSum.of(Datum(f"{change.kind} of {name}", value=change.enthalpy, source=change.source))
         temperature = Fraction(repr(change.temperature))

@@ -138,6 +138,9 @@ def _verdict(first: Profile, second: Profile, heat: HeatSum) -> str:
         return f"cannot be judged: {', '.join(heat.unknowns)} unknown"
     if not heat.complete:
         return f"cannot be judged: uncertainty of {', '.join(heat.not_stated)} not stated"
+    doubtful = [step.label for item in (first, second) for step in item.steps if "not unique" in step.origin]
+    if doubtful:
+        return f"cannot be judged: the known rows give more than one heat for {', '.join(dict.fromkeys(doubtful))}"
     if not heat.terms and not heat.exact:
         return "no difference: both totals rest on the same data"
     if not significant(heat):
@@ -147,6 +150,8 @@ def _verdict(first: Profile, second: Profile, heat: HeatSum) -> str:
     size = f"{reading(apart)} {first.unit}"
     if any("yield uncertainty" in note for item in (first, second) for note in item.yield_notes):
         size += " (yield uncertainty not included)"
+    if any("no yield typed" in note for item in (first, second) for note in item.yield_notes):
+        size += " (yields that are not typed counted as 100 %)"
     if lower.total.exact > 0:
         return f"{upper.route.name} takes up more heat than {lower.route.name} by {size}"
     return f"{lower.route.name} releases more heat than {upper.route.name} by {size}"

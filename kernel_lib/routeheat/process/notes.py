@@ -25,6 +25,7 @@ def profile_notes(profile: Profile) -> tuple[str, ...]:
     """All notes of a profile, most important first."""
     found = [
         *_not_entered(profile),
+        *_unbalanced(profile),
         *_losses(profile),
         *profile.yield_notes,
         *(f"{item.label}: {item.origin}" for item in profile.steps if item.origin.startswith("derived")),
@@ -44,6 +45,7 @@ def figure_notes(profiles: Sequence[Profile]) -> tuple[str, ...]:
         profiles,
         lambda item: (
             *_not_entered(item),
+            *_unbalanced(item),
             *item.yield_notes,
             *_estimated(item),
             *_double_counts(item),
@@ -51,6 +53,11 @@ def figure_notes(profiles: Sequence[Profile]) -> tuple[str, ...]:
             SHORT,
         ),
     )
+
+
+def _unbalanced(profile: Profile) -> list[str]:
+    found = [item.label for item in profile.steps if item.step.row.reaction.imbalance]
+    return [f"does not balance and is counted as typed: {', '.join(found)}"] if found else []
 
 
 def merged(profiles: Sequence[Profile], notes: Callable[[Profile], Iterable[str]]) -> tuple[str, ...]:
