@@ -17,6 +17,9 @@ from typing import Any, Literal
 from routeheat.present.numbers import MINUS, fraction, reading
 from routeheat.present.table import Reading
 
+PER_MOLE = "kJ/mol"
+"""Unit of a heat per mole of reaction, or of product."""
+
 
 @dataclass(frozen=True, slots=True)
 class Datum:
@@ -70,6 +73,8 @@ class HeatSum:
     """Pairs (datum, partial derivative), none of them zero."""
     k: float = 2.0
     """Coverage factor used when the sum is printed."""
+    unit: str = PER_MOLE
+    """Unit of :attr:`exact`; a profile per kilogram or per batch states its own."""
 
     @classmethod
     def of(cls, datum: Datum, coefficient: Fraction = Fraction(1), k: float = 2.0) -> HeatSum:
@@ -87,11 +92,13 @@ class HeatSum:
         """``Σ factor · part``; shared data merge, data that cancel disappear."""
         value = Fraction(0)
         merged: dict[Datum, Fraction] = {}
+        unit = PER_MOLE
         for factor, part in parts:
             value += factor * part.exact
+            unit = part.unit if part.unit != PER_MOLE else unit
             for datum, coefficient in part.terms:
                 merged[datum] = merged.get(datum, Fraction(0)) + factor * coefficient
-        return cls(value, tuple((datum, c) for datum, c in merged.items() if c), k)
+        return cls(value, tuple((datum, c) for datum, c in merged.items() if c), k, unit)
 
     def __add__(self, other: HeatSum) -> HeatSum:
         return HeatSum.total(((Fraction(1), self), (Fraction(1), other)), self.k)
@@ -209,7 +216,7 @@ class HeatSum:
             raise TypeError(f"the heat contains unknown {', '.join(self.unknowns)}: it has no number")
         from routeheat.units import to_pint
 
-        return to_pint(float(self.exact), "kJ/mol")
+        return to_pint(float(self.exact), self.unit)
 
     def __str__(self) -> str:
-        return f"{self.text} kJ/mol"
+        return f"{self.text} {self.unit}"

@@ -147,7 +147,7 @@ class Profile(Shown):
             for item in self.steps
             if item.molar is not None
         ]
-        return HeatSum.total(parts, self.k)
+        return replace(HeatSum.total(parts, self.k), unit=self.basis.unit)
 
     def __getitem__(self, label: str) -> StepHeat:
         """The row with that label; raises ``KeyError``."""
@@ -208,6 +208,7 @@ def _step_heat(found: Extents, step: Step, molar: MolarHeat, basis: Basis, befor
     k = found.route.k
     loss: Loss = "reacted" if step.side_of else step.loss_counts
     heat = None if molar.heat is None else heat_on_basis(found, step, molar.heat, basis.moles, loss)
+    heat = None if heat is None else replace(heat, unit=basis.unit)
     return StepHeat(
         step=step,
         extent=found[step.label],
