@@ -257,15 +257,15 @@ class Gas:
     @property
     def notes(self) -> tuple[str, ...]:
         """What limits the rate, and what does not."""
-        if not self.per_mol:
-            return ()
         found = []
-        if self.feed_h is None:
+        if self.per_mol and self.feed_h is None:
             found.append("gas: the rate is not limited by a feed")
-        elif self.accumulated > _SMALL:
+        elif self.per_mol and self.accumulated > _SMALL:
             found.append(f"gas: the feed limits the rate only while little accumulates (Xac {self.accumulated:.2g})")
         if self.origin != "typed":
-            found.append("gas counts the gaseous products of the equation; dissolved gas and side reactions do not")
+            found.append(
+                "gas counts the gaseous products of the equation; dissolved gas and side reactions are not assessed"
+            )
         return tuple(found)
 
     def to_dict(self) -> dict[str, Any]:

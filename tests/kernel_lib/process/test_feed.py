@@ -91,5 +91,10 @@ def test_accumulation_takes_the_feed_out_of_control() -> None:
     assert "only while little accumulates" in gas(accumulated=0.4).notes[0]
 
 
-def test_no_gas_needs_no_note() -> None:
-    assert gas(per_mol=0.0).notes == ()
+def test_no_gas_in_the_equation_is_not_no_gas() -> None:
+    (note,) = gas(per_mol=0.0, origin="from the equation").notes
+    assert "side reactions are not assessed" in note
+
+
+def test_a_typed_zero_needs_no_note() -> None:
+    assert gas(per_mol=0.0, origin="typed").notes == ()
